@@ -16,7 +16,12 @@ export default defineConfig({
         resolve: { alias },
         test: {
           name: "unit",
-          include: ["src/**/*.test.{ts,tsx}", "figure-specs/**/*.test.ts", "tests/reference/**/*.test.ts", "scripts/**/*.test.{ts,mjs}"],
+          include: [
+            "src/**/*.test.{ts,tsx}",
+            "figure-specs/**/*.test.ts",
+            "tests/reference/**/*.test.ts",
+            "scripts/**/*.test.{ts,mjs}",
+          ],
           testTimeout: 60_000,
         },
       },
