@@ -1,0 +1,148 @@
+import type { Spec } from "vega"
+import type { z } from "zod"
+import type { Quantity } from "@/lib/domain/quantity"
+import type { StatisticalWarning } from "@/lib/stats/warnings/statistical-warning"
+
+/** One column of a dataset version as a figure sees it. */
+export interface TableColumn {
+  readonly name: string
+  readonly unit: string | null
+  /** TeX without dollar signs, or null. */
+  readonly symbol: string | null
+  /** Numbers with NaN where missing, or text. Length = rows of the table. */
+  readonly values: Float64Array | readonly string[]
+}
+
+/** One accepted dataset version, in memory. */
+export interface DataTable {
+  readonly columns: readonly TableColumn[]
+  readonly rows: number
+}
+
+/** Everything a panel may read: the manuscript's tables by dataset name, already pinned to versions. */
+export interface PanelInput {
+  readonly tables: ReadonlyMap<string, DataTable>
+}
+
+/** Value of the curve-splitting parameter; null when a panel has one curve. */
+export type CurveKey = number | string | null
+
+/** Numbers as drawn, one table a series: what the bundle exports as CSV. */
+export interface DrawnSeries {
+  /** kebab-case, unique in the panel: "mean", "fit", "band". */
+  readonly name: string
+  readonly curve: CurveKey
+  readonly columns: readonly {
+    readonly name: string
+    readonly unit: string | null
+    readonly description: string
+    readonly values: readonly number[]
+  }[]
+}
+
+export interface CurveResult {
+  readonly curve: CurveKey
+  readonly quantities: readonly Quantity[]
+}
+
+/** What every kind computes. Kinds may add fields of their own; all must survive JSON unchanged. */
+export interface PanelResult {
+  readonly kind: string
+  readonly curves: readonly CurveResult[]
+  /** Quantities of the panel as a whole, and the named ones of the spec. */
+  readonly quantities: readonly Quantity[]
+  readonly warnings: readonly StatisticalWarning[]
+  readonly series: readonly DrawnSeries[]
+}
+
+/** Type sizes, line widths and colours of a figure, in points of the printed page. */
+export interface Look {
+  readonly fontFamily: string
+  readonly fontPt: number
+  readonly smallPt: number
+  readonly frameWidthPt: number
+  readonly curveWidthPt: number
+  readonly markerSizePt: number
+  readonly tickLengthPt: number
+  readonly palette: readonly string[]
+}
+
+/** The data rectangle that a panel draws into, in points. */
+export interface Frame {
+  readonly widthPt: number
+  readonly heightPt: number
+  readonly look: Look
+}
+
+/** One line of a legend, drawn by lib/render so that it can be shared between panels. */
+export interface LegendEntry {
+  readonly label: string
+  readonly color: string
+  readonly marker: string | null
+  readonly dash: readonly number[] | null
+}
+
+/** What `build` hands to lib/render and to the working view: Vega with data inlined and no URLs. */
+export interface PanelDrawing {
+  readonly spec: Spec
+  readonly legend: { readonly title: string | null; readonly entries: readonly LegendEntry[] }
+  /** One sentence for readers who cannot see the figure. */
+  readonly alternativeText: string
+}
+
+/** Kinds of control that a slot of the sentence opens in place. */
+export type SlotControl =
+  | { readonly type: "column"; readonly role: string; readonly optional: boolean }
+  | { readonly type: "dataset" }
+  | {
+      readonly type: "choice"
+      readonly options: readonly { readonly value: string; readonly label: string }[]
+    }
+  | {
+      readonly type: "number"
+      readonly min?: number
+      readonly max?: number
+      readonly step?: number
+      readonly unit?: string
+    }
+  | { readonly type: "window"; readonly unit: string | null }
+  | { readonly type: "filters" }
+  | { readonly type: "references" }
+  | { readonly type: "text" }
+
+/** A run of the sentence: plain words, or a slot that edits the place in the panel that `pointer` names (RFC 6901). */
+export type SentencePart =
+  | { readonly type: "words"; readonly text: string }
+  | {
+      readonly type: "slot"
+      readonly id: string
+      readonly pointer: string
+      /** What the slot says now; may hold TeX between dollar signs. */
+      readonly text: string
+      /** What it accepts, for screen readers and the margin: "fit window, two times in 1/J". */
+      readonly accepts: string
+      readonly control: SlotControl
+    }
+
+export interface Sentence {
+  readonly parts: readonly SentencePart[]
+  /** The same sentence without controls, with its numbers when there is a result: the statistics part of the caption. */
+  readonly plain: string
+}
+
+/**
+ * What a panel shows. Each kind is a folder in figure-specs/ and one line in registry.ts.
+ *
+ * `compute` is pure and seeded and throws SpecError for input that it cannot use; `build` and `sentence` are pure too.
+ */
+export interface FigureKind<Params extends { kind: string }, Result extends PanelResult> {
+  readonly kind: Params["kind"]
+  readonly title: string
+  readonly description: string
+  readonly params: z.ZodType<Params>
+  /** A valid panel to start from, given the columns at hand. */
+  propose(dataset: string, table: DataTable, roles: ReadonlyMap<string, string>): Params
+  compute(input: PanelInput, params: Params, onProgress?: (done: number, total: number) => void): Result
+  build(result: Result, params: Params, frame: Frame): PanelDrawing
+  sentence(params: Params, result?: Result): Sentence
+}
