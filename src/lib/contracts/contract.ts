@@ -3,12 +3,13 @@ import type { Action, TokenScope } from "@/lib/domain/policy"
 import type { ProblemCode } from "./problems"
 
 /**
- * Who may call an endpoint: anyone, anyone signed in (with the token scope it takes), or a member of the manuscript in
- * the path whose role allows the action. The endpoint wrapper in server/http enforces it; the role test walks it.
+ * Who may call an endpoint: anyone, anyone signed in (with the token scope it takes; null: no token, only a browser's
+ * sign-in), or a member of the manuscript in the path, as its parameter `manuscriptId`, whose role allows the action.
+ * The endpoint wrapper in server/http enforces it; the role test walks it.
  */
 export type Access =
   | { readonly who: "public" }
-  | { readonly who: "signed-in"; readonly scope: TokenScope }
+  | { readonly who: "signed-in"; readonly scope: TokenScope | null }
   | { readonly who: "member"; readonly action: Action }
 
 /** A request body: JSON of a schema, the raw bytes as a stream, or none. */
@@ -20,13 +21,14 @@ export interface Contract<
   Query extends z.ZodType = z.ZodType,
   Body extends BodyContract = BodyContract,
   Answer extends z.ZodType | string | null = z.ZodType | string | null,
+  Who extends Access = Access,
 > {
   readonly id: string
   readonly method: "GET" | "POST" | "PUT" | "PATCH" | "DELETE"
   /** With parameters in braces: "/api/v1/manuscripts/{manuscriptId}". */
   readonly path: string
   readonly summary: string
-  readonly access: Access
+  readonly access: Who
   readonly params: Params
   readonly query: Query
   readonly body: Body
@@ -44,6 +46,7 @@ export function defineContract<
   Query extends z.ZodType,
   Body extends BodyContract,
   Answer extends z.ZodType | string | null,
->(contract: Contract<Params, Query, Body, Answer>): Contract<Params, Query, Body, Answer> {
+  const Who extends Access,
+>(contract: Contract<Params, Query, Body, Answer, Who>): Contract<Params, Query, Body, Answer, Who> {
   return contract
 }
