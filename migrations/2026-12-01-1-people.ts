@@ -20,7 +20,7 @@ export async function up(db: Kysely<unknown>): Promise<void> {
       name text not null check (length(name) between 1 and 200),
       orcid text check (orcid ~ '^\\d{4}-\\d{4}-\\d{4}-\\d{3}[\\dX]$'),
       password_hash text,
-      email_verified_at timestamptz,
+      email_verified_at timestamptz not null default now(),
       mail text not null default 'each' check (mail in ('each', 'digest', 'none')),
       created_at timestamptz not null default now(),
       updated_at timestamptz not null default now()
@@ -72,16 +72,16 @@ export async function up(db: Kysely<unknown>): Promise<void> {
     );
     create index on password_reset (person_id);
 
-    create table email_verification (
+    -- A person exists once the address is proved, so that nobody chooses a password for another's address.
+    create table registration (
       id uuid primary key default uuid_v7(),
-      person_id uuid not null references person on delete cascade,
-      email text not null,
+      email text not null check (email like '%_@_%' and length(email) <= 254),
+      name text not null check (length(name) between 1 and 200),
       hash bytea not null unique check (length(hash) = 32),
       created_at timestamptz not null default now(),
       expires_at timestamptz not null,
       used_at timestamptz
     );
-    create index on email_verification (person_id);
 
     create table rate_limit (
       key text primary key,

@@ -1,7 +1,7 @@
 import { runMigrations } from "graphile-worker"
 import { Kysely, Migrator, PostgresDialect } from "kysely"
 import { migrations } from "../../../../migrations"
-import { createPool } from "./client"
+import { createPool } from "./create-pool"
 import { grantRights } from "./rights"
 
 /**

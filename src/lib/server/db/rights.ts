@@ -10,7 +10,7 @@ const rights: Record<string, string> = {
   sign_in: "select, insert, update, delete",
   api_token: "select, insert, update",
   password_reset: "select, insert, update",
-  email_verification: "select, insert, update",
+  registration: "select, insert, update",
   rate_limit: "select, insert, update, delete",
   manuscript: "select, insert, update",
   membership: "select, insert, update, delete",

@@ -146,16 +146,6 @@ export interface DraftFigure {
   position: number;
 }
 
-export interface EmailVerification {
-  createdAt: Generated<Timestamp>;
-  email: string;
-  expiresAt: Timestamp;
-  hash: Buffer;
-  id: Generated<string>;
-  personId: string;
-  usedAt: Timestamp | null;
-}
-
 export interface Event {
   at: Generated<Timestamp>;
   data: Generated<JsonColumn>;
@@ -279,7 +269,7 @@ export interface PasswordReset {
 export interface Person {
   createdAt: Generated<Timestamp>;
   email: string;
-  emailVerifiedAt: Timestamp | null;
+  emailVerifiedAt: Generated<Timestamp>;
   id: Generated<string>;
   mail: Defaulted<MailPreference>;
   name: string;
@@ -292,6 +282,16 @@ export interface RateLimit {
   hits: number;
   key: string;
   windowEndsAt: Timestamp;
+}
+
+export interface Registration {
+  createdAt: Generated<Timestamp>;
+  email: string;
+  expiresAt: Timestamp;
+  hash: Buffer;
+  id: Generated<string>;
+  name: string;
+  usedAt: Timestamp | null;
 }
 
 export interface Rendering {
@@ -365,7 +365,6 @@ export interface DB {
   datasetVersion: DatasetVersion;
   draft: Draft;
   draftFigure: DraftFigure;
-  emailVerification: EmailVerification;
   event: Event;
   figure: Figure;
   figureVersion: FigureVersion;
@@ -380,6 +379,7 @@ export interface DB {
   passwordReset: PasswordReset;
   person: Person;
   rateLimit: RateLimit;
+  registration: Registration;
   rendering: Rendering;
   result: Result;
   signIn: SignIn;
