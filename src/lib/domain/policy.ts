@@ -16,6 +16,7 @@ export const actions = {
   "manuscript.edit": corresponding,
   "people.read": reader,
   "people.manage": corresponding,
+  "people.leave": reader,
   "dataset.read": reader,
   "dataset.upload": author,
   "dataset.accept": author,

@@ -20,6 +20,8 @@ const parsers: pg.CustomTypesConfig = {
 /** A pool that survives dropped connections: without the handler one would end the process. */
 export function createPool(url: string, max = 10): pg.Pool {
   const pool = new pg.Pool({ connectionString: url, max, types: parsers })
-  pool.on("error", (error) => console.error(`database connection lost: ${error.message}`))
+  const report = (error: Error) => console.error(`database connection lost: ${error.message}`)
+  pool.on("error", report)
+  pool.on("connect", (client) => client.on("error", report))
   return pool
 }
