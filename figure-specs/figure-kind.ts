@@ -1,7 +1,9 @@
-import type { Spec } from "vega"
 import type { z } from "zod"
 import type { Quantity } from "@/lib/domain/quantity"
 import type { StatisticalWarning } from "@/lib/stats/warnings/statistical-warning"
+import type { Frame, PanelDrawing } from "./chart/drawing"
+
+export type { Frame, LegendEntry, Look, PanelDrawing } from "./chart/drawing"
 
 /** One column of a dataset version as a figure sees it. */
 export interface TableColumn {
@@ -53,41 +55,6 @@ export interface PanelResult {
   readonly quantities: readonly Quantity[]
   readonly warnings: readonly StatisticalWarning[]
   readonly series: readonly DrawnSeries[]
-}
-
-/** Type sizes, line widths and colours of a figure, in points of the printed page. */
-export interface Look {
-  readonly fontFamily: string
-  readonly fontPt: number
-  readonly smallPt: number
-  readonly frameWidthPt: number
-  readonly curveWidthPt: number
-  readonly markerSizePt: number
-  readonly tickLengthPt: number
-  readonly palette: readonly string[]
-}
-
-/** The data rectangle that a panel draws into, in points. */
-export interface Frame {
-  readonly widthPt: number
-  readonly heightPt: number
-  readonly look: Look
-}
-
-/** One line of a legend, drawn by lib/render so that it can be shared between panels. */
-export interface LegendEntry {
-  readonly label: string
-  readonly color: string
-  readonly marker: string | null
-  readonly dash: readonly number[] | null
-}
-
-/** What `build` hands to lib/render and to the working view: Vega with data inlined and no URLs. */
-export interface PanelDrawing {
-  readonly spec: Spec
-  readonly legend: { readonly title: string | null; readonly entries: readonly LegendEntry[] }
-  /** One sentence for readers who cannot see the figure. */
-  readonly alternativeText: string
 }
 
 /** Kinds of control that a slot of the sentence opens in place. */
