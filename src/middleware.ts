@@ -1,6 +1,6 @@
 import { randomUUID } from "node:crypto"
 import type { MiddlewareHandler } from "astro"
-import { getSession } from "@/lib/server/auth/auth-astro.mjs"
+import { getSession } from "@/lib/server/auth/auth-astro.js"
 import { contracts } from "@/lib/contracts"
 import { Problem } from "@/lib/contracts/problems"
 import type { Actor } from "@/lib/server/auth/actor"

@@ -1,7 +1,7 @@
 import { skipCSRFCheck } from "@auth/core"
 import Credentials from "@auth/core/providers/credentials"
 import type { Provider } from "@auth/core/providers"
-import type { AstroAuthOptions } from "./auth-astro.mjs"
+import type { AstroAuthOptions } from "./auth-astro.js"
 import { getDb } from "@/lib/server/db/client"
 import { env } from "@/lib/server/env"
 import { checkCredentials } from "./check-credentials"

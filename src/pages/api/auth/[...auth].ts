@@ -1,5 +1,5 @@
 import type { APIRoute } from "astro"
-import { AstroAuth } from "@/lib/server/auth/auth-astro.mjs"
+import { AstroAuth } from "@/lib/server/auth/auth-astro.js"
 import { authOptions } from "@/lib/server/auth/auth-options"
 import { atPublicUrl } from "@/lib/server/http/at-public-url"
 
