@@ -34,12 +34,7 @@ describe("distributions against R", () => {
     ))
 
   test("Working–Hotelling factors of a straight line (p = 2), relative 1e-9", () => {
-    const table = read("working_hotelling") as {
-      p: number[]
-      n: number[]
-      level: number[]
-      W?: number[]
-    } & Record<string, number[]>
+    const table = read("working_hotelling") as Record<"p" | "n" | "level" | "multiplier", number[]>
     const factor = table.multiplier
     let checked = 0
     table.p.forEach((p, i) => {

@@ -1,13 +1,17 @@
 import type { Ensemble } from "./ensemble"
 
-/** Logarithms of the mean and of its squared relative error, on the complete times with t > 0. */
+/**
+ * Logarithms of the mean and of its squared relative error, on the complete times with t > 0: of the whole sample and of
+ * its replicates (deletions of one trajectory, or resamples).
+ */
 export interface LogMoments {
   /** ln t, length K. */
   readonly x: Float64Array
   /** Index of each of the K points in the ensemble's abscissa. */
   readonly index: Int32Array
   readonly trajectories: number
-  /** Row 0 is the whole sample, row i + 1 the sample without trajectory i; (M + 1) K values. NaN where a mean is not positive. */
+  readonly replicates: number
+  /** Row 0 is the whole sample, row r + 1 replicate r; (replicates + 1) K values. NaN where a mean is not positive. */
   readonly lnMean: Float64Array
   /** ln (SE/mean)^2 in the same layout; -Infinity where the error is zero. */
   readonly lnRelativeVariance: Float64Array
@@ -86,9 +90,21 @@ export function logMoments(ensemble: Ensemble, reference: number | null = null):
     x: Float64Array.from(index, (k) => Math.log(abscissa[k]!)),
     index,
     trajectories,
+    replicates: trajectories,
     lnMean,
     lnRelativeVariance,
   }
+}
+
+/** Indices of the times t > 0 at which every trajectory has a value, without the reference time. */
+export function completeTimes({ abscissa, values, ids }: Ensemble, reference: number | null): Int32Array {
+  const complete = (k: number) => {
+    for (let i = 0; i < ids.length; i += 1) if (Number.isNaN(values[i * abscissa.length + k]!)) return false
+    return true
+  }
+  return Int32Array.from(
+    [...abscissa.keys()].filter((k) => abscissa[k]! > 0 && k !== reference && complete(k)),
+  )
 }
 
 function sumsAt({ abscissa, values, ids }: Ensemble, weights: Float64Array, k: number): Sums {

@@ -4,19 +4,16 @@ import { fitLogLine, logWeights, type LogLine, type LogWeights } from "./fit-log
 
 export type PowerLawRefusal = "TOO_FEW_POINTS" | "NONPOSITIVE_MEANS"
 
-/** y = exp(level) (t / t_centre)^slope, fitted to the ensemble mean inside a window. */
+/** y = exp(level) (t / t_centre)^slope, fitted to the ensemble mean inside a window, and to each replicate of it. */
 export interface PowerLawFit extends LogLine {
   /** First and one past the last point used, in the log moments' grid. */
   readonly from: number
   readonly to: number
+  /** Of each replicate; NaN where a replicate's mean is not positive. */
   readonly slopes: Float64Array
-  /** ln of the fitted mean at the whole sample's centre, without trajectory i. */
+  /** ln of each replicate's fitted mean at the whole sample's centre. */
   readonly levels: Float64Array
   readonly curvatures: Float64Array
-  readonly slopeError: JackknifeSummary
-  readonly levelError: JackknifeSummary
-  readonly curvatureError: JackknifeSummary
-  readonly covariance: number
 }
 
 /** Points of the grid inside a closed window of the abscissa (not its logarithm); null leaves a side open. */
@@ -35,9 +32,9 @@ export function pointsInWindow(
 }
 
 /**
- * Log–log weighted least squares on the ensemble mean, repeated without each trajectory in turn, weights included.
+ * Log–log weighted least squares on the ensemble mean, repeated on every replicate, weights included.
  *
- * @param moments of the reduced ensemble and its deletions
+ * @param moments of the reduced ensemble and its deletions or resamples
  * @param window closed interval of the abscissa
  * @returns the fit, or why there is none
  * @see docs/methods.md, power law
@@ -47,7 +44,7 @@ export function fitPowerLaw(
   window: readonly [number | null, number | null],
   mode: LogWeights = "smoothed",
 ): PowerLawFit | { readonly refused: PowerLawRefusal; readonly points: number } {
-  const { x, lnMean, lnRelativeVariance, trajectories } = moments
+  const { x, lnMean, lnRelativeVariance, replicates } = moments
   const points = x.length
   const [from, to] = pointsInWindow(x, window)
   if (to - from < 3) return { refused: "TOO_FEW_POINTS", points: Math.max(0, to - from) }
@@ -61,36 +58,43 @@ export function fitPowerLaw(
     return fitLogLine(x, lnMean, row * points, from, to, weights)
   }
   const whole = lineOf(0)
-  const slopes = new Float64Array(trajectories)
-  const levels = new Float64Array(trajectories)
-  const curvatures = new Float64Array(trajectories)
-  for (let i = 0; i < trajectories; i += 1) {
+  const slopes = new Float64Array(replicates)
+  const levels = new Float64Array(replicates)
+  const curvatures = new Float64Array(replicates)
+  for (let i = 0; i < replicates; i += 1) {
     const line = lineOf(i + 1)
     slopes[i] = line.slope
     levels[i] = line.level + line.slope * (whole.centre - line.centre)
     curvatures[i] = line.curvature
   }
+  return { ...whole, from, to, slopes, levels, curvatures }
+}
+
+/** Errors of a fit whose replicates are the deletions of one trajectory. */
+export interface PowerLawErrors {
+  readonly slope: JackknifeSummary
+  readonly level: JackknifeSummary
+  readonly curvature: JackknifeSummary
+  /** Between level and slope. */
+  readonly covariance: number
+}
+
+/** Jackknife errors of a fit to deletions. @see docs/methods.md, uncertainty */
+export function powerLawErrors(fit: PowerLawFit): PowerLawErrors {
   return {
-    ...whole,
-    from,
-    to,
-    slopes,
-    levels,
-    curvatures,
-    slopeError: jackknife(whole.slope, slopes),
-    levelError: jackknife(whole.level, levels),
-    curvatureError: jackknife(whole.curvature, curvatures),
-    covariance: jackknifeCovariance(levels, slopes),
+    slope: jackknife(fit.slope, fit.slopes),
+    level: jackknife(fit.level, fit.levels),
+    curvature: jackknife(fit.curvature, fit.curvatures),
+    covariance: jackknifeCovariance(fit.levels, fit.slopes),
   }
 }
 
 /** Standard error of the fitted ln y at x = ln t. */
-export function lineError(fit: PowerLawFit, x: number): number {
+export function lineError(
+  fit: LogLine,
+  errors: { readonly slope: number; readonly level: number; readonly covariance: number },
+  x: number,
+): number {
   const d = x - fit.centre
-  return Math.sqrt(
-    Math.max(
-      0,
-      fit.levelError.standardError ** 2 + 2 * d * fit.covariance + d * d * fit.slopeError.standardError ** 2,
-    ),
-  )
+  return Math.sqrt(Math.max(0, errors.level ** 2 + 2 * d * errors.covariance + d * d * errors.slope ** 2))
 }
