@@ -38,7 +38,8 @@ export interface DrawnSeries {
     readonly name: string
     readonly unit: string | null
     readonly description: string
-    readonly values: readonly number[]
+    /** null where there is no value. */
+    readonly values: readonly (number | null)[]
   }[]
 }
 

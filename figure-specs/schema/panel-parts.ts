@@ -64,7 +64,7 @@ export const fitWindow = z
 export const intervalParams = z
   .object({
     method: z
-      .enum(["jackknife-t", "expanded-percentile", "bca", "studentized", "percentile", "basic", "analytic"])
+      .enum(["jackknife-t", "expanded-percentile", "bca", "percentile", "basic"])
       .default("jackknife-t"),
     level: z.number().gt(0).lt(1).default(0.95),
     resamples: z.int().min(100).max(20000).default(2000),
@@ -86,8 +86,8 @@ export type BandParams = z.infer<typeof bandParams>
 /** Table to ensemble: what is averaged, how its error is taken, how times are grouped. */
 export const reductionParams = z
   .object({
-    estimator: z.enum(["mean", "given"]).default("mean"),
-    uncertainty: z.enum(["standard-error", "t-bar", "given", "none"]).default("standard-error"),
+    estimator: z.literal("mean").default("mean"),
+    uncertainty: z.enum(["standard-error", "none"]).default("standard-error"),
     bins: z
       .object({ perDecade: z.int().min(3).max(30) })
       .strict()
@@ -99,8 +99,7 @@ export const reductionParams = z
         z.object({ constant: z.number().refine((c) => c !== 0, { message: "Dividing by zero." }) }).strict(),
       ])
       .default("none"),
-    unequalGrids: z.enum(["refuse", "inner-join", "interpolate", "bins"]).default("refuse"),
-    missing: z.enum(["complete-times", "available-case"]).default("complete-times"),
+    unequalGrids: z.enum(["refuse", "inner-join"]).default("refuse"),
   })
   .strict()
 export type ReductionParams = z.infer<typeof reductionParams>

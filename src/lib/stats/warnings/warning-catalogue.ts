@@ -111,6 +111,16 @@ export const warningCatalogue = {
     severity: "note",
     sentence: "The window was chosen by looking at the data; its choice is not in the error.",
   },
+  TOO_FEW_POINTS: {
+    severity: "severe",
+    sentence:
+      "Only {points} points lie in the fit window; a line through them is not a fit. Widen the window.",
+  },
+  SCATTER_EXCEEDS_ERRORS: {
+    severity: "caution",
+    sentence:
+      "The points scatter more than their stated errors (chi-square per degree of freedom {ratio}); the error of the fit is optimistic.",
+  },
   SMALL_CHANGE: {
     severity: "caution",
     sentence:
