@@ -37,12 +37,16 @@ export async function readJsonText(request: Request): Promise<string> {
   if (request.body === null) return ""
   if (type !== "application/json")
     throw new Problem("unsupported-media-type", "Send the body as application/json.")
+  // The rest of a body that is not read would be taken for the next request: the connection ends with the answer.
+  const tooLarge = new Problem("too-large", `A JSON body may have ${maxJsonBytes} bytes at most.`, [], {
+    connection: "close",
+  })
+  if (Number(request.headers.get("content-length") ?? 0) > maxJsonBytes) throw tooLarge
   const chunks: Uint8Array[] = []
   let size = 0
   for await (const chunk of request.body as unknown as AsyncIterable<Uint8Array>) {
     size += chunk.byteLength
-    if (size > maxJsonBytes)
-      throw new Problem("too-large", `A JSON body may have ${maxJsonBytes} bytes at most.`)
+    if (size > maxJsonBytes) throw tooLarge
     chunks.push(chunk)
   }
   return new TextDecoder().decode(Buffer.concat(chunks))
