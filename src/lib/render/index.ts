@@ -1,0 +1,5 @@
+export { renderFigure, type RenderedFigure } from "./figure/render-figure"
+export { svgToPng, svgToTiff } from "./formats/raster"
+export { renderingVersions, type RenderingVersions } from "./rendering-versions"
+export type { MathBox } from "./typeset/set-formula"
+export { typesetLabel, typesetMath, type TypesetMath } from "./typeset/typesetter"
