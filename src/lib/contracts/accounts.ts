@@ -60,7 +60,7 @@ export const register = defineContract({
   body: z.object({ email, name: personName }).strict(),
   status: 202,
   answer: null,
-  problems: ["invalid-request", "too-many-requests"],
+  problems: ["invalid-request", "not-allowed", "too-many-requests"],
 })
 
 export const confirmRegistration = defineContract({

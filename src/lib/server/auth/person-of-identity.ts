@@ -13,7 +13,8 @@ export interface ProvenIdentity {
 
 /**
  * The person behind an identity: known by it, or by the same verified address (then the identity is added), or new.
- * Both sides have proved the address, so joining them gives nobody another's account.
+ * Both sides have proved the address, so joining them gives nobody another's account. Whom the provider knows may come
+ * in also where registration is closed: the group has named that provider as its door.
  */
 export async function personOfIdentity(db: Db, identity: ProvenIdentity): Promise<string> {
   return db.transaction().execute(async (trx) => {

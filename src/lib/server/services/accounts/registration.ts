@@ -7,6 +7,7 @@ import { hashOfSecret, newSecret } from "@/lib/server/auth/secret"
 import type { Db } from "@/lib/server/db/client"
 import { insertEvent } from "@/lib/server/db/events"
 import { addMail } from "@/lib/server/db/outbox"
+import { env } from "@/lib/server/env"
 import { linkTo } from "./links"
 import { refuseWeakPassword } from "./new-password"
 
@@ -16,12 +17,14 @@ const validHours = 48
  * Sends the link that proves an address. Someone who has an account already gets a mail that says so; the answer on the
  * web is the same for both, so that nobody learns who has one.
  *
- * @throws Problem `too-many-requests`
+ * @throws Problem `too-many-requests`; `not-allowed` where accounts are opened by invitation only
  */
 export async function requestRegistration(
   db: Db,
   { email, name, clientAddress }: { email: string; name: string; clientAddress: string },
 ): Promise<void> {
+  if (!env().OPEN_REGISTRATION)
+    throw new Problem("not-allowed", "Accounts are opened by invitation here: ask a corresponding author.")
   await limitAttempts(db, limitFrom("registration", clientAddress), limitFor("registration", email, 5))
   await db.transaction().execute(async (trx) => {
     const known = await findPersonByEmail(trx, email)
