@@ -6,10 +6,11 @@ import type pg from "pg"
 import { afterAll, beforeAll, describe, expect, test } from "vitest"
 import { createDb, type Db } from "@/lib/server/db/client"
 import { createPool } from "@/lib/server/db/create-pool"
+import { deleteExpiredRows } from "@/lib/server/db/delete-expired-rows"
 import { insertEvent } from "@/lib/server/db/events"
 import { addMail } from "@/lib/server/db/outbox"
 import { migrate } from "@/lib/server/db/migrate"
-import { countAttempt, deleteEndedWindows } from "@/lib/server/db/rate-limits"
+import { countAttempt } from "@/lib/server/db/rate-limits"
 import { freshDatabase } from "@tests/support/fresh-database"
 import { insertPerson } from "@tests/support/one-of-everything"
 
@@ -138,7 +139,7 @@ describe("rate limits", () => {
       .updateTable("rateLimit")
       .set({ windowEndsAt: sql<Date>`now() - interval '1 second'` })
       .execute()
-    await deleteEndedWindows(app)
+    await deleteExpiredRows(app)
     expect(await app.selectFrom("rateLimit").select("key").execute()).toEqual([])
   })
 })

@@ -31,11 +31,3 @@ export async function countAttempt(
 export async function forgetAttempts(db: Db, key: string): Promise<void> {
   await db.deleteFrom("rateLimit").where("key", "=", key).execute()
 }
-
-/** Removes windows that have ended; run from time to time. */
-export async function deleteEndedWindows(db: Db): Promise<void> {
-  await db
-    .deleteFrom("rateLimit")
-    .where("windowEndsAt", "<", sql<Date>`now()`)
-    .execute()
-}

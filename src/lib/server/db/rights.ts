@@ -7,7 +7,7 @@ export const applicationRole = "afterquench_app"
 const rights: Record<string, string> = {
   person: "select, insert, update",
   identity: "select, insert",
-  sign_in: "select, insert, update, delete",
+  sign_in: "select, insert, update",
   api_token: "select, insert, update",
   password_reset: "select, insert, update",
   registration: "select, insert, update",
