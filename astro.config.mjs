@@ -1,0 +1,37 @@
+import node from "@astrojs/node"
+import react from "@astrojs/react"
+import tailwindcss from "@tailwindcss/vite"
+import { defineConfig } from "astro/config"
+import { bundlePrograms } from "./scripts/bundle-programs.mjs"
+
+export default defineConfig({
+  output: "server",
+  adapter: node({ mode: "middleware" }),
+  integrations: [react(), bundlePrograms()],
+  // Ours is in the middleware: it knows the public address, which the adapter does not.
+  security: { checkOrigin: false },
+  devToolbar: { enabled: false },
+  experimental: {
+    // Sent as a header with every page. Style attributes are set by React; style elements only by their hash.
+    csp: {
+      directives: [
+        "default-src 'self'",
+        "img-src 'self' data: blob:",
+        "font-src 'self' data:",
+        "connect-src 'self'",
+        "worker-src 'self' blob:",
+        "object-src 'none'",
+        "base-uri 'none'",
+        "form-action 'self'",
+        "frame-ancestors 'none'",
+        "style-src-attr 'unsafe-inline'",
+      ],
+    },
+  },
+  vite: {
+    plugins: [tailwindcss()],
+    // Scripts stay files, so that the policy needs no hash for each of them.
+    build: { assetsInlineLimit: 0, chunkSizeWarningLimit: 1500 },
+    worker: { format: "es" },
+  },
+})
