@@ -6,7 +6,7 @@ import { written } from "./position"
 const paper = "#ffffff"
 
 /** A table of a drawing by its name; rows are plain numbers. */
-export const dataSet = (name: string, rows: readonly Record<string, number | boolean>[]): Data => ({
+export const dataSet = (name: string, rows: readonly Record<string, number | boolean | string>[]): Data => ({
   name,
   values: [...rows],
 })
@@ -86,16 +86,26 @@ export const pointMark = (
   },
 })
 
-/** A path in points of the frame, for what would be hundreds of marks of its own: all error bars of a curve. */
-export const pathMark = (d: string, stroke: Stroke): Mark => ({
+/**
+ * Paths in points of the frame, column "path" of a table: for what would be hundreds of marks of its own, such as all
+ * error bars of a curve. In a table and not in the mark, so that a working view can exchange it like other data.
+ */
+export const pathMark = (data: string, stroke: Stroke): Mark => ({
   type: "path",
-  encode: { enter: { path: { value: d }, ...strokeOf(stroke) } },
+  from: { data },
+  encode: { enter: { path: { field: "path" }, ...strokeOf(stroke) } },
 })
 
 /** Vertical bars without caps, merged into one path. Positions in points of the frame. */
 export const barsPath = (
   bars: readonly { readonly x: number; readonly from: number; readonly to: number }[],
 ): string => bars.map(({ x, from, to }) => `M${written(x)},${written(from)}V${written(to)}`).join("")
+
+type Point = { readonly x: number; readonly y: number }
+
+/** A straight line from one point of the frame to another. */
+export const linePath = (from: Point, to: Point): string =>
+  `M${written(from.x)},${written(from.y)}L${written(to.x)},${written(to.y)}`
 
 /** The Vega specification of a panel: frame-sized, data inlined, marks cut at the frame. */
 export function panelSpec(parts: {

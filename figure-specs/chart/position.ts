@@ -17,7 +17,17 @@ export function fractionAlong(axis: AxisScale, value: number): number {
 }
 
 /** Maps data to points of a frame, from its top left corner. */
-export function framePositions(x: AxisScale, y: AxisScale, widthPt: number, heightPt: number) {
+export interface FramePositions {
+  readonly x: (value: number) => number
+  readonly y: (value: number) => number
+}
+
+export function framePositions(
+  x: AxisScale,
+  y: AxisScale,
+  widthPt: number,
+  heightPt: number,
+): FramePositions {
   return {
     x: (value: number) => widthPt * fractionAlong(x, value),
     y: (value: number) => heightPt * (1 - fractionAlong(y, value)),

@@ -11,6 +11,7 @@ interface SceneItem {
   readonly x2?: number
   readonly y2?: number
   readonly defined?: boolean
+  readonly path?: string
   readonly bounds?: { readonly x1: number; readonly y1: number; readonly x2: number; readonly y2: number }
   readonly items?: readonly SceneMark[]
 }
@@ -31,6 +32,19 @@ function between(
 
 function polyline(points: readonly (readonly [number, number])[]): (readonly [number, number])[] {
   return points.flatMap((point, k) => (k === 0 ? [point] : between(points[k - 1]!, point)))
+}
+
+/** Ink along the M, L and V commands that this project's own paths are made of. */
+function pathInk(path: string): Ink {
+  const points: (readonly [number, number])[] = []
+  let at: readonly [number, number] = [0, 0]
+  for (const [, letter, numbers] of path.matchAll(/([MLV])([^MLVZ]+)/g)) {
+    const [first = 0, second = 0] = numbers!.split(",").map(Number)
+    const next = letter === "V" ? ([at[0], first] as const) : ([first, second] as const)
+    points.push(...(letter === "M" ? [next] : between(at, next)))
+    at = next
+  }
+  return points
 }
 
 /** Where the marks of a drawn panel put ink: points along lines and edges of bands, at markers, on error bars. */
@@ -57,6 +71,8 @@ export function sceneInk(mark: SceneMark): Ink {
       return items.flatMap(({ bounds }) =>
         bounds ? [[(bounds.x1 + bounds.x2) / 2, (bounds.y1 + bounds.y2) / 2] as const] : [],
       )
+    case "path":
+      return items.flatMap(({ path }) => (path ? pathInk(path) : []))
     default:
       return []
   }
