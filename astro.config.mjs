@@ -1,5 +1,6 @@
 import node from "@astrojs/node"
 import react from "@astrojs/react"
+import auth from "auth-astro"
 import tailwindcss from "@tailwindcss/vite"
 import { defineConfig } from "astro/config"
 import { bundlePrograms } from "./scripts/bundle-programs.mjs"
@@ -7,12 +8,12 @@ import { bundlePrograms } from "./scripts/bundle-programs.mjs"
 export default defineConfig({
   output: "server",
   adapter: node({ mode: "middleware" }),
-  integrations: [react(), bundlePrograms()],
+  integrations: [react(), auth({ injectEndpoints: false }), bundlePrograms()],
   // Ours is in the middleware: it knows the public address, which the adapter does not.
   security: { checkOrigin: false },
   devToolbar: { enabled: false },
   experimental: {
-    // Sent as a header with every page. Style attributes are set by React; style elements only by their hash.
+    // Sent as a header with every page. The middleware adds what Astro has no word for: style attributes, which React sets.
     csp: {
       directives: [
         "default-src 'self'",
@@ -24,7 +25,6 @@ export default defineConfig({
         "base-uri 'none'",
         "form-action 'self'",
         "frame-ancestors 'none'",
-        "style-src-attr 'unsafe-inline'",
       ],
     },
   },

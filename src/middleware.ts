@@ -46,6 +46,10 @@ export const onRequest: MiddlewareHandler = async ({ request, locals, url, ...co
   // A copy, because redirects come with headers that cannot be changed.
   const answer = new Response(response.body, response)
   answer.headers.set("x-request-id", locals.requestId)
+  // React and the chart set style attributes; style elements still need their hash.
+  const policy = answer.headers.get("content-security-policy")
+  if (policy?.includes("script-src"))
+    answer.headers.set("content-security-policy", `${policy} style-src-attr 'unsafe-inline';`)
   const renewed = answer.headers.getSetCookie().map((cookie) => cookie.split("=")[0])
   for (const name of spent)
     if (!renewed.includes(name)) answer.headers.append("set-cookie", forgetCookie(name))
