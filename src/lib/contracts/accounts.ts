@@ -3,7 +3,7 @@ import { isOrcid } from "@/lib/domain/orcid"
 import { tokenScopes } from "@/lib/domain/policy"
 import { mailPreferences } from "@/lib/domain/states"
 import { defineContract } from "./contract"
-import { email, id, nothing, timestamp } from "./fields"
+import { email, id, timestamp } from "./fields"
 
 /** As it is typed: no trimming; the rules of domain/password-rule are checked where the name and address are known. */
 const password = z.string().min(1).max(1000)
@@ -27,8 +27,6 @@ export const signIn = defineContract({
   path: "/api/v1/sign-ins",
   summary: "Sign in with e-mail and password; the answer sets the session cookie.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ email, password }).strict(),
   status: 204,
   answer: null,
@@ -41,12 +39,8 @@ export const signOut = defineContract({
   path: "/api/v1/sign-ins/current",
   summary: "Sign out of this browser.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
-  problems: [],
 })
 
 export const register = defineContract({
@@ -55,8 +49,6 @@ export const register = defineContract({
   path: "/api/v1/accounts",
   summary: "Ask for an account; a mail brings the link that proves the address.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ email, name: personName }).strict(),
   status: 202,
   answer: null,
@@ -69,8 +61,6 @@ export const confirmRegistration = defineContract({
   path: "/api/v1/accounts/confirm",
   summary: "Open the account that a link proves, with a password.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ token: linkSecret, password }).strict(),
   status: 201,
   answer: z.object({ email: z.string() }),
@@ -83,8 +73,6 @@ export const requestPasswordReset = defineContract({
   path: "/api/v1/password-resets",
   summary: "Ask for a link to set a new password. The answer is the same for unknown addresses.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ email }).strict(),
   status: 202,
   answer: null,
@@ -97,8 +85,6 @@ export const usePasswordReset = defineContract({
   path: "/api/v1/password-resets/use",
   summary: "Set a new password by a link; signs out everywhere.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ token: linkSecret, password }).strict(),
   status: 204,
   answer: null,
@@ -111,12 +97,8 @@ export const getMe = defineContract({
   path: "/api/v1/me",
   summary: "Who is signed in.",
   access: { who: "signed-in", scope: "read" },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 200,
   answer: me,
-  problems: [],
 })
 
 export const changeMe = defineContract({
@@ -125,8 +107,6 @@ export const changeMe = defineContract({
   path: "/api/v1/me",
   summary: "Change one's name, ORCID iD or wish for mail.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
   body: z
     .object({
       name: personName.optional(),
@@ -145,8 +125,6 @@ export const changePassword = defineContract({
   path: "/api/v1/me/password",
   summary: "Change one's password; signs out all other browsers.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
   body: z.object({ current: password.nullable(), next: password }).strict(),
   status: 204,
   answer: null,
@@ -169,12 +147,8 @@ export const listSignIns = defineContract({
   path: "/api/v1/me/sign-ins",
   summary: "Browsers in which one is signed in.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 200,
   answer: z.object({ items: z.array(signInAnswer) }),
-  problems: [],
 })
 
 export const signOutEverywhere = defineContract({
@@ -183,12 +157,8 @@ export const signOutEverywhere = defineContract({
   path: "/api/v1/me/sign-ins",
   summary: "Sign out in every browser, this one included.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
-  problems: [],
 })
 
 export const revokeSignIn = defineContract({
@@ -198,8 +168,6 @@ export const revokeSignIn = defineContract({
   summary: "Sign out in one browser.",
   access: { who: "signed-in", scope: null },
   params: z.object({ signInId: id }),
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
   problems: ["not-found"],
@@ -222,12 +190,8 @@ export const listTokens = defineContract({
   path: "/api/v1/me/tokens",
   summary: "One's tokens that are neither revoked nor expired.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 200,
   answer: z.object({ items: z.array(tokenAnswer) }),
-  problems: [],
 })
 
 export const createToken = defineContract({
@@ -236,8 +200,6 @@ export const createToken = defineContract({
   path: "/api/v1/me/tokens",
   summary: "Make a token. Its secret is shown in this answer and never again.",
   access: { who: "signed-in", scope: null },
-  params: nothing,
-  query: nothing,
   body: z
     .object({
       name: z.string().trim().min(1).max(100),
@@ -257,8 +219,6 @@ export const revokeToken = defineContract({
   summary: "Revoke a token at once.",
   access: { who: "signed-in", scope: null },
   params: z.object({ tokenId: id }),
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
   problems: ["not-found"],

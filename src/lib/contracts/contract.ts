@@ -1,4 +1,4 @@
-import type { z } from "zod"
+import { z } from "zod"
 import type { Action, TokenScope } from "@/lib/domain/policy"
 import type { ProblemCode } from "./problems"
 
@@ -11,6 +11,9 @@ export type Access =
   | { readonly who: "public" }
   | { readonly who: "signed-in"; readonly scope: TokenScope | null }
   | { readonly who: "member"; readonly action: Action }
+
+/** An object without fields. */
+export const nothing = z.object({})
 
 /** A request body: JSON of a schema, the raw bytes as a stream, or none. */
 export type BodyContract = z.ZodType | "stream" | null
@@ -40,13 +43,18 @@ export interface Contract<
   readonly headers?: Readonly<Record<string, string>>
 }
 
-/** Keeps the literal types of a contract. */
+/** What a contract leaves out, it does not take: no parameters, no query, no body. */
+type Written<C extends Contract> = Omit<C, "params" | "query" | "body" | "problems"> &
+  Partial<Pick<C, "params" | "query" | "body" | "problems">>
+
+/** Fills in what is left out and keeps the literal types of a contract. */
 export function defineContract<
-  Params extends z.ZodType,
-  Query extends z.ZodType,
-  Body extends BodyContract,
   Answer extends z.ZodType | string | null,
   const Who extends Access,
->(contract: Contract<Params, Query, Body, Answer, Who>): Contract<Params, Query, Body, Answer, Who> {
-  return contract
+  Params extends z.ZodType = typeof nothing,
+  Query extends z.ZodType = typeof nothing,
+  Body extends BodyContract = null,
+>(contract: Written<Contract<Params, Query, Body, Answer, Who>>): Contract<Params, Query, Body, Answer, Who> {
+  const empty = { params: nothing, query: nothing, body: null, problems: [] }
+  return { ...empty, ...contract } as unknown as Contract<Params, Query, Body, Answer, Who>
 }

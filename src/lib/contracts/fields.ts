@@ -1,5 +1,7 @@
 import { z } from "zod"
 
+export { nothing } from "./contract"
+
 /** An identifier as it stands in addresses and answers. */
 export const id = z.uuid()
 
@@ -11,9 +13,6 @@ export const timestamp = z.preprocess(
 
 /** E-mail addresses are compared without regard to case and kept as written. */
 export const email = z.string().trim().max(254).pipe(z.email())
-
-/** What is neither in the path, nor in the query. */
-export const nothing = z.object({})
 
 /** Path parameters of everything below one manuscript. */
 export const manuscriptParams = z.object({ manuscriptId: id })

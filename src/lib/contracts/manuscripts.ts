@@ -2,7 +2,7 @@ import { z } from "zod"
 import { roles } from "@/lib/domain/policy"
 import { draftStates } from "@/lib/domain/states"
 import { defineContract } from "./contract"
-import { id, manuscriptParams, nothing, timestamp } from "./fields"
+import { id, manuscriptParams, timestamp } from "./fields"
 
 const title = z.string().trim().min(1).max(500)
 const abstract = z.string().trim().max(10_000)
@@ -39,12 +39,8 @@ export const listManuscripts = defineContract({
   path: "/api/v1/manuscripts",
   summary: "The manuscripts one takes part in, last changed first.",
   access: { who: "signed-in", scope: "read" },
-  params: nothing,
-  query: nothing,
-  body: null,
   status: 200,
   answer: z.object({ items: z.array(manuscriptInList) }),
-  problems: [],
 })
 
 export const createManuscript = defineContract({
@@ -53,8 +49,6 @@ export const createManuscript = defineContract({
   path: "/api/v1/manuscripts",
   summary: "Start a manuscript; one becomes its corresponding author. Draft 1 is opened with it.",
   access: { who: "signed-in", scope: "all" },
-  params: nothing,
-  query: nothing,
   body: z.object({ title, abstract: abstract.default(""), profile: profile.optional() }).strict(),
   status: 201,
   answer: manuscriptAnswer,
@@ -69,11 +63,8 @@ export const getManuscript = defineContract({
   summary: "A manuscript.",
   access: { who: "member", action: "manuscript.read" },
   params: manuscriptParams,
-  query: nothing,
-  body: null,
   status: 200,
   answer: manuscriptAnswer,
-  problems: [],
   headers: { ETag: "Revision for If-Match." },
 })
 
@@ -84,7 +75,6 @@ export const changeManuscript = defineContract({
   summary: "Change title, abstract or journal profile.",
   access: { who: "member", action: "manuscript.edit" },
   params: manuscriptParams,
-  query: nothing,
   body: z
     .object({ title: title.optional(), abstract: abstract.optional(), profile: profile.optional() })
     .strict(),

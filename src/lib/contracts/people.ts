@@ -1,7 +1,7 @@
 import { z } from "zod"
 import { roles } from "@/lib/domain/policy"
 import { defineContract } from "./contract"
-import { email, id, manuscriptParams, nothing, timestamp } from "./fields"
+import { email, id, manuscriptParams, personName, timestamp } from "./fields"
 
 const role = z.enum(roles)
 const memberParams = manuscriptParams.extend({ personId: id })
@@ -24,11 +24,8 @@ export const listMembers = defineContract({
   summary: "Who takes part, in which role.",
   access: { who: "member", action: "people.read" },
   params: manuscriptParams,
-  query: nothing,
-  body: null,
   status: 200,
   answer: z.object({ items: z.array(memberAnswer) }),
-  problems: [],
 })
 
 export const changeMember = defineContract({
@@ -38,7 +35,6 @@ export const changeMember = defineContract({
   summary: "Give a member another role. A manuscript keeps a corresponding author.",
   access: { who: "member", action: "people.manage" },
   params: memberParams,
-  query: nothing,
   body: z.object({ role }).strict(),
   status: 200,
   answer: memberAnswer,
@@ -52,8 +48,6 @@ export const removeMember = defineContract({
   summary: "Remove a member; what they wrote stays.",
   access: { who: "member", action: "people.manage" },
   params: memberParams,
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
   problems: ["not-found", "conflict"],
@@ -66,8 +60,6 @@ export const leaveManuscript = defineContract({
   summary: "Leave a manuscript; its last corresponding author has to hand over first.",
   access: { who: "member", action: "people.leave" },
   params: manuscriptParams,
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
   problems: ["conflict"],
@@ -78,7 +70,7 @@ export const invitationAnswer = z.object({
   email: z.string(),
   role,
   message: z.string(),
-  invitedBy: z.object({ id, name: z.string() }),
+  invitedBy: personName,
   createdAt: timestamp,
   expiresAt: timestamp,
 })
@@ -90,11 +82,8 @@ export const listInvitations = defineContract({
   summary: "Invitations that wait for an answer.",
   access: { who: "member", action: "people.manage" },
   params: manuscriptParams,
-  query: nothing,
-  body: null,
   status: 200,
   answer: z.object({ items: z.array(invitationAnswer) }),
-  problems: [],
 })
 
 export const invite = defineContract({
@@ -104,7 +93,6 @@ export const invite = defineContract({
   summary: "Invite a person by mail. Inviting the same address again replaces the earlier link.",
   access: { who: "member", action: "people.manage" },
   params: manuscriptParams,
-  query: nothing,
   body: z.object({ email, role, message: z.string().trim().max(2000).default("") }).strict(),
   status: 201,
   answer: invitationAnswer,
@@ -118,8 +106,6 @@ export const revokeInvitation = defineContract({
   summary: "Take an invitation back; its link stops working.",
   access: { who: "member", action: "people.manage" },
   params: manuscriptParams.extend({ invitationId: id }),
-  query: nothing,
-  body: null,
   status: 204,
   answer: null,
   problems: ["not-found"],
@@ -131,8 +117,6 @@ export const lookAtInvitation = defineContract({
   path: "/api/v1/invitations/look",
   summary: "What the link of an invitation offers, without using it.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z.object({ token: linkSecret }).strict(),
   status: 200,
   answer: z.object({
@@ -154,8 +138,6 @@ export const acceptInvitation = defineContract({
   path: "/api/v1/invitations/accept",
   summary: "Accept by the link: as whoever is signed in, or by opening an account for the invited address.",
   access: { who: "public" },
-  params: nothing,
-  query: nothing,
   body: z
     .object({
       token: linkSecret,
