@@ -45,7 +45,18 @@ function clientAddress(request) {
   return address ?? "unknown"
 }
 
-const isOdd = (url) => url.startsWith("//") || url.includes("\\") || /%(2f|5c|00)/i.test(url.split("?")[0])
+function isUtf8(pathname) {
+  try {
+    return typeof decodeURI(pathname) === "string"
+  } catch {
+    return false
+  }
+}
+
+function isOdd(url) {
+  const pathname = url.split("?")[0]
+  return url.startsWith("//") || url.includes("\\") || /%(2f|5c|00)/i.test(pathname) || !isUtf8(pathname)
+}
 
 /** A file of the build that a path names, or undefined. */
 function fileOf(pathname) {

@@ -315,6 +315,10 @@ describe("odd addresses and pages", () => {
     "/api/v1/manuscripts/%2e%2e%2fme",
     "/api%5cv1/me",
   ])("%s is refused", async (address) => expect((await fetch(app.url + address)).status).toBe(404))
+  test("a path that is no UTF-8 is refused and ends nothing", async () => {
+    expect((await fetch(`${app.url}/%E0%A4%A`)).status).toBeLessThan(500)
+    expect((await fetch(`${app.url}/sign-in`, { redirect: "manual" })).status).not.toBe(500)
+  })
   test("a page sends strangers to the sign-in page and remembers where they wanted to go", async () => {
     const answer = await fetch(`${app.url}/manuscripts/1?a=b`, { redirect: "manual" })
     expect([answer.status, answer.headers.get("location")]).toEqual([
