@@ -60,6 +60,12 @@ function parametersOf(all: Everything, own: { signInId: string; tokenId: string 
     invitationId: all.invitationId,
     signInId: own.signInId,
     tokenId: own.tokenId,
+    datasetName: "annihilation",
+    figureId: all.figureId,
+    format: "svg",
+    threadId: all.threadId,
+    draftNumber: "1",
+    number: "1",
   }
 }
 
