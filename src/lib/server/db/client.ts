@@ -1,11 +1,10 @@
-import { CamelCasePlugin, Kysely, PostgresDialect, type Transaction } from "kysely"
+import { CamelCasePlugin, Kysely, PostgresDialect } from "kysely"
 import type pg from "pg"
 import { env } from "@/lib/server/env"
 import { createPool } from "./create-pool"
 import type { DB } from "./types"
 
 export type Db = Kysely<DB>
-export type Trx = Transaction<DB>
 
 /** Kysely over a pool; snake_case in SQL, camelCase here. JSON inside columns keeps its keys. */
 export function createDb(pool: pg.Pool): Db {
