@@ -47,7 +47,7 @@ export const datasetColumn = z.object({
   symbol: z.string().nullable(),
   role: columnRole.nullable(),
   kind: z.enum(["number", "text"]),
-  statistics: z.json(),
+  statistics: z.unknown(),
 })
 export type DatasetColumn = z.output<typeof datasetColumn>
 
@@ -55,8 +55,8 @@ export const datasetVersionAnswer = datasetVersionInList.extend({
   datasetName: z.string(),
   columns: z.array(datasetColumn),
   /** What the reader saw: preview, notes, problems, questions. Null until it has been read. */
-  reading: z.json(),
-  recipe: z.json(),
+  reading: z.unknown(),
+  recipe: z.unknown(),
   failure: z.object({ message: z.string() }).loose().nullable(),
 })
 export type DatasetVersionAnswer = z.output<typeof datasetVersionAnswer>
