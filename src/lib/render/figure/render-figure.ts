@@ -8,6 +8,7 @@ import type { FigureSpec } from "@specs/figure-spec"
 import { drawMarks } from "../panel/draw-marks"
 import { typesetterFor, type Typesetter } from "../typeset/typesetter"
 import { fontRules } from "../svg/embed-fonts"
+import { checkLabels } from "./check-labels"
 import { gridFrames, type FrameRect } from "./grid-frames"
 import { outerSvg, pointsPerMm } from "./outer-svg"
 import { panelBuilders, type PanelBuilders } from "./panel-builders"
@@ -103,6 +104,7 @@ export async function renderFigure(
 ): Promise<RenderedFigure> {
   const look = { ...defaultLook, ...changes }
   const typesetter = await typesetterFor(look.fontFamily)
+  checkLabels(spec, typesetter)
   const panels = layOut(spec, results, look, builders, typesetter)
   const bodies: string[] = []
   for (const [index, panel] of panels.entries()) bodies.push(await panelSvg(panel, index, typesetter))

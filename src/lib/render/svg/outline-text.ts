@@ -7,7 +7,7 @@ export function readText({ attributes, text }: SvgElement) {
     text,
     x: Number(attributes["x"] ?? 0),
     y: Number(attributes["y"] ?? 0),
-    family: attributes["font-family"] ?? "",
+    family: (attributes["font-family"] ?? "").split(",")[0]!,
     sizePt: Number(attributes["font-size"]),
     bold: attributes["font-weight"] === "700",
     italic: attributes["font-style"] === "italic",

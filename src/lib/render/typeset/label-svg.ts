@@ -3,6 +3,12 @@ import { baselineOffset, type TextShape } from "@specs/chart/shape"
 import { escapeXml } from "../svg/parse-svg"
 import type { LabelRun, SetLabel } from "./set-label"
 
+/** What stands in where a viewer ignores embedded fonts: faces of the same widths first. */
+const standIns: Record<string, string> = {
+  Arimo: "Arimo,Arial,Helvetica,sans-serif",
+  "STIX Two Text": "STIX Two Text,Times New Roman,Times,serif",
+}
+
 function textRun(
   run: LabelRun & { type: "text" },
   x: number,
@@ -14,7 +20,7 @@ function textRun(
   const weight = label.bold ? ' font-weight="700"' : ""
   const style = label.italic ? ' font-style="italic"' : ""
   const place = `x="${written(x)}" y="${written(y - run.rise * fontPt)}"`
-  const face = `font-family="${run.family}" font-size="${size}"${weight}${style}`
+  const face = `font-family="${standIns[run.family] ?? run.family}" font-size="${size}"${weight}${style}`
   return `<text ${place} ${face} xml:space="preserve">${escapeXml(run.text)}</text>`
 }
 
