@@ -8,7 +8,7 @@ export const eventAnswer = z.object({
   person: personName.nullable(),
   kind: z.string(),
   subject: z.string().nullable(),
-  data: z.json(),
+  data: z.unknown(),
 })
 export type EventAnswer = z.output<typeof eventAnswer>
 

@@ -1,0 +1,10 @@
+import { followEvents as contract } from "@/lib/contracts/events"
+import { endpoint } from "@/lib/server/http/endpoint"
+import { eventStream } from "@/lib/server/services/history/live-events"
+
+export const GET = endpoint(contract, async ({ actor, params, request }) => {
+  const stream = await eventStream(params.manuscriptId, actor.person.id, request.signal)
+  return new Response(stream, {
+    headers: { "content-type": "text/event-stream", "cache-control": "no-store", "x-accel-buffering": "no" },
+  })
+})
