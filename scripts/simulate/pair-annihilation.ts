@@ -11,15 +11,15 @@ export interface AnnihilationSettings {
   readonly seed: number
 }
 
-/** Density of walkers at each recorded time, one row a trajectory. */
-export type Densities = readonly Float64Array[]
-
 /**
  * A + A -> 0 in one dimension in continuous time: every walker hops at total rate G, half to each side, and two walkers
  * that meet vanish. All walkers share one exponential clock of rate G N, so every step picks one walker and one side.
  *
  * From the full lattice the density is exactly exp(-2 G t) I0(2 G t), which decays as (4 pi G t)^(-1/2): Glauber, J. Math.
- * Phys. 4, 294 (1963) by duality; Torney & McConnell, J. Phys. Chem. 87, 1941 (1983).
+ * Phys. 4, 294 (1963) by duality; Torney & McConnell, J. Phys. Chem. 87, 1941 (1983). The ring does not matter while
+ * (G t)^(1/2), the distance over which walkers know of each other, is far below the number of sites.
+ *
+ * @returns walkers per site at each time, one row a trajectory
  */
 export function simulateAnnihilation({
   sites,
@@ -27,7 +27,7 @@ export function simulateAnnihilation({
   rate,
   times,
   seed,
-}: AnnihilationSettings): Densities {
+}: AnnihilationSettings): Float64Array[] {
   return Array.from({ length: trajectories }, (_, trajectory) => {
     const stream = randomStream(seed, trajectory)
     const occupant = new Int32Array(sites).fill(-1)
@@ -70,13 +70,4 @@ export function simulateAnnihilation({
     }
     return density
   })
-}
-
-/** Times from `first` to `last`, `perDecade` to a decade, rounded to four digits as a simulation would print them. */
-export function logTimes(first: number, last: number, perDecade: number): number[] {
-  const steps = Math.round(Math.log10(last / first) * perDecade)
-  const times = Array.from({ length: steps + 1 }, (_, k) =>
-    Number((first * 10 ** (k / perDecade)).toPrecision(4)),
-  )
-  return times.filter((t, k) => k === 0 || t > times[k - 1]!)
 }
