@@ -37,6 +37,10 @@ function inkCounter(ink: Ink, { widthPt, heightPt }: FrameSize): (box: Box) => n
   }
 }
 
+/** How many points of ink lie in a box. */
+export const inkIn = (ink: Ink, { left, top, right, bottom }: Box): number =>
+  ink.filter(([x, y]) => x >= left && x <= right && y >= top && y <= bottom).length
+
 /** How many points of ink lie in a convex shape, given by its corners clockwise on the page. */
 export const inkInside = (ink: Ink, corners: readonly (readonly [number, number])[]): number =>
   ink.reduce((count, [x, y]) => {

@@ -37,16 +37,17 @@ function placeLabel(label: FrameLabel, ink: Ink, { widthPt, heightPt, look }: Fr
  * Labels and legend of a panel, placed where they cover the least of what is drawn: labels first, because their places
  * are bound to the data, then the legend.
  *
- * @param withLegend false where a legend is shared by the figure
+ * @param options.legend false where a legend before this one says the same
+ * @param options.taken boxes that hold something already, such as a panel letter
  */
 export function insideShapes(
   drawing: PanelDrawing,
   frame: Frame,
   ink: Ink,
   measure: MeasureLabel,
-  withLegend: boolean,
+  { legend: withLegend, taken: boxes }: { readonly legend: boolean; readonly taken: readonly Box[] },
 ): readonly Shape[] {
-  const taken = [...ink]
+  const taken = [...ink, ...boxes.flatMap(boxInk)]
   const shapes: Shape[] = []
   for (const label of drawing.labels) {
     const placed = placeLabel(label, taken, frame, measure)

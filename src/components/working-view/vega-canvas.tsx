@@ -119,7 +119,11 @@ function SetChart({
   const { drawing, frame, margins, texts } = panel
   const { template, embedded, ink } = useLivingView(panel, onReady)
   const shapes = useMemo(
-    () => [frameShape(drawing.axes, frame, look), ...texts, ...insideShapes(drawing, frame, ink, set, true)],
+    () => [
+      frameShape(drawing.axes, frame, look),
+      ...texts,
+      ...insideShapes(drawing, frame, ink, set, { legend: true, taken: [] }),
+    ],
     [drawing, frame, look, texts, ink, set],
   )
   useEffect(() => {

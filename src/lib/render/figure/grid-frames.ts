@@ -56,13 +56,16 @@ function divide(tracks: readonly Track[], count: number, total: number, edge: nu
  * The frames of a figure: equal in size, aligned across rows and columns, as large as the page allows.
  *
  * @param edge free space at the rim of the page
- * @param gap free space between what belongs to neighbouring panels
+ * @param gaps free space between what belongs to neighbouring panels
  */
 export function gridFrames(
   panels: readonly PlacedPanel[],
   grid: { readonly rows: number; readonly columns: number },
   page: { readonly width: number; readonly height: number },
-  { edge, gap }: { readonly edge: number; readonly gap: number },
+  {
+    edge,
+    gaps,
+  }: { readonly edge: number; readonly gaps: { readonly columns: number; readonly rows: number } },
 ): readonly FrameRect[] {
   const across = panels.map(({ column, columnSpan, margins }): Track => ({
     start: column - 1,
@@ -76,8 +79,8 @@ export function gridFrames(
     before: margins.top,
     after: margins.bottom,
   }))
-  const columns = divide(across, grid.columns, page.width, edge, gap)
-  const rows = divide(down, grid.rows, page.height, edge, gap)
+  const columns = divide(across, grid.columns, page.width, edge, gaps.columns)
+  const rows = divide(down, grid.rows, page.height, edge, gaps.rows)
   return panels.map(({ row, column, rowSpan, columnSpan }) => {
     const x = columns.starts[column - 1]!
     const y = rows.starts[row - 1]!

@@ -1,17 +1,20 @@
-import { insideShapes } from "@specs/chart/inside-shapes"
-import type { Frame, Look, PanelDrawing } from "@specs/chart/drawing"
 import { frameShape } from "@specs/chart/axis-shapes"
+import type { Look } from "@specs/chart/drawing"
+import { insideShapes } from "@specs/chart/inside-shapes"
 import { defaultLook } from "@specs/chart/look"
-import { marginsOf, surroundingTexts, type Margins } from "@specs/chart/surroundings"
+import { patchLook, readLookPatch, type LookPatch } from "@specs/chart/look-patch"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
-import { drawMarks } from "../panel/draw-marks"
-import { typesetterFor, type Typesetter } from "../typeset/typesetter"
+import { SpecError } from "@specs/spec-error"
+import { drawMarks, type DrawnMarks } from "../panel/draw-marks"
 import { fontRules } from "../svg/embed-fonts"
+import { typesetterFor } from "../typeset/typesetter"
 import { checkLabels } from "./check-labels"
-import { gridFrames, type FrameRect } from "./grid-frames"
-import { outerSvg, pointsPerMm } from "./outer-svg"
+import { checkPlaces } from "./check-places"
+import { layOut } from "./lay-out"
+import { outerSvg } from "./outer-svg"
 import { panelBuilders, type PanelBuilders } from "./panel-builders"
+import { letterShapes, panelLetters } from "./panel-letters"
 import { movedSvg, shapesSvg } from "./shape-svg"
 
 /** A figure at its printed size. */
@@ -24,70 +27,18 @@ export interface RenderedFigure {
   readonly notes: readonly string[]
 }
 
-const edge = 1.5
-
-interface LaidPanel {
-  readonly drawing: PanelDrawing
-  readonly rect: FrameRect
-  readonly frame: Frame
+/** The look of each panel: the figure's, changed by the panel's own style. The face is the figure's: one paper, one face. */
+function panelLooks(spec: FigureSpec, look: Look): readonly Look[] {
+  const read = spec.panels.map(({ style }, index) => readLookPatch(style, `/panels/${index}/style`))
+  const issues = read.flatMap((one) => one.issues)
+  if (issues.length > 0) throw new SpecError(issues)
+  return read.map(({ patch }) => ({ ...patchLook(look, patch), fontFamily: look.fontFamily }))
 }
 
-/** Builds all panels for given frames; kinds decide ticks by the room they have. */
-function buildAll(
-  spec: FigureSpec,
-  results: readonly PanelResult[],
-  frames: readonly Frame[],
-  builders: PanelBuilders,
-): readonly PanelDrawing[] {
-  return spec.panels.map((panel, index) => {
-    const builder = builders[panel.kind]
-    const result = results[index]
-    if (!builder || !result)
-      throw new Error(`Panel ${index + 1}: no ${builder ? "result" : "kind"} for ${panel.kind}.`)
-    return builder(result, panel, frames[index]!)
-  })
-}
-
-/**
- * Finds frames and drawings that agree: margins follow from labels, labels from ticks, ticks from the frame. Two rounds
- * settle all but odd cases; after four the last margins stand, which can only leave a little more room than needed.
- */
-function layOut(
-  spec: FigureSpec,
-  results: readonly PanelResult[],
-  look: Look,
-  builders: PanelBuilders,
-  { measure }: Typesetter,
-): readonly LaidPanel[] {
-  const page = { width: spec.size.widthMm * pointsPerMm, height: spec.size.heightMm * pointsPerMm }
-  let margins: readonly Margins[] = spec.panels.map(() => ({ left: 36, right: 6, top: 4, bottom: 28 }))
-  for (let round = 0; ; round += 1) {
-    const placed = spec.panels.map(({ place }, index) => ({ ...place, margins: margins[index]! }))
-    const rects = gridFrames(placed, spec.grid, page, { edge, gap: look.fontPt })
-    const frames = rects.map(({ width, height }): Frame => ({ widthPt: width, heightPt: height, look }))
-    const drawings = buildAll(spec, results, frames, builders)
-    const needed = drawings.map((drawing, index) => {
-      const frame = frames[index]!
-      return marginsOf(surroundingTexts(drawing, frame, measure), frame, measure)
-    })
-    const settled = needed.every((need, index) =>
-      (["left", "right", "top", "bottom"] as const).every(
-        (side) => Math.abs(need[side] - margins[index]![side]) < 0.01,
-      ),
-    )
-    if (settled || round === 4)
-      return drawings.map((drawing, index) => ({ drawing, rect: rects[index]!, frame: frames[index]! }))
-    margins = needed
-  }
-}
-
-async function panelSvg(panel: LaidPanel, index: number, typesetter: Typesetter): Promise<string> {
-  const { drawing, rect, frame } = panel
-  const { measure } = typesetter
-  const marks = await drawMarks(drawing.spec, `panel-${index + 1}-`)
-  const around = [frameShape(drawing.axes, frame, frame.look), ...surroundingTexts(drawing, frame, measure)]
-  const inside = insideShapes(drawing, frame, marks.ink, measure, true)
-  return movedSvg(rect.x, rect.y, marks.svg + shapesSvg([...around, ...inside], typesetter))
+/** Whether a legend says what one before it already said. */
+function repeated(legends: readonly { readonly entries: readonly unknown[] }[], index: number): boolean {
+  const own = JSON.stringify(legends[index])
+  return legends.slice(0, index).some((legend) => JSON.stringify(legend) === own)
 }
 
 /**
@@ -95,21 +46,51 @@ async function panelSvg(panel: LaidPanel, index: number, typesetter: Typesetter)
  *
  * @param spec a figure spec with defaults filled in
  * @param results one result a panel, in the order of the spec
- * @param options.look changes to the default look, such as a house look
+ * @param options.look changes to the default look, such as a manuscript's house look
+ * @throws SpecError with every label, place or style setting that cannot be used
+ * @see docs/rendering.md
  */
 export async function renderFigure(
   spec: FigureSpec,
   results: readonly PanelResult[],
-  { look: changes = {}, builders = panelBuilders }: { look?: Partial<Look>; builders?: PanelBuilders } = {},
+  { look: changes = {}, builders = panelBuilders }: { look?: LookPatch; builders?: PanelBuilders } = {},
 ): Promise<RenderedFigure> {
-  const look = { ...defaultLook, ...changes }
+  const look = patchLook(defaultLook, changes)
   const typesetter = await typesetterFor(look.fontFamily)
+  const { measure } = typesetter
+  checkPlaces(spec)
   checkLabels(spec, typesetter)
-  const panels = layOut(spec, results, look, builders, typesetter)
-  const bodies: string[] = []
-  for (const [index, panel] of panels.entries()) bodies.push(await panelSvg(panel, index, typesetter))
-  const body = bodies.join("")
-  const alternativeText = panels.map(({ drawing }) => drawing.alternativeText).join(" ")
+  const panels = layOut({ spec, results, looks: panelLooks(spec, look), builders, measure })
+  const marks: DrawnMarks[] = []
+  for (const [index, { drawing }] of panels.entries())
+    marks.push(await drawMarks(drawing.spec, `panel-${index + 1}-`))
+  const letters = panelLetters(spec.panels, look)
+  const lettered = letterShapes(
+    panels.map(({ drawing, frame }, index) => ({
+      letter: letters[index]!,
+      frame,
+      ink: marks[index]!.ink,
+      filled: drawing.colorBar !== null,
+    })),
+    measure,
+  )
+  const legends = panels.map(({ drawing }) => drawing.legend)
+  const body = panels
+    .map(({ drawing, rect, frame, texts }, index) => {
+      const { svg, ink } = marks[index]!
+      const letter = lettered[index]!
+      const inside = insideShapes(drawing, frame, ink, measure, {
+        legend: !repeated(legends, index),
+        taken: letter.box ? [letter.box] : [],
+      })
+      const shapes = [frameShape(drawing.axes, frame, frame.look), ...texts, ...letter.shapes, ...inside]
+      return movedSvg(rect.x, rect.y, svg + shapesSvg(shapes, typesetter))
+    })
+    .join("")
+  const described = panels.map(({ drawing }, index) =>
+    letters[index] ? `${letters[index]} ${drawing.alternativeText}` : drawing.alternativeText,
+  )
+  const alternativeText = described.join(" ")
   const { widthMm, heightMm } = spec.size
   const svg = outerSvg({
     widthMm,
@@ -119,5 +100,8 @@ export async function renderFigure(
     body,
     style: await fontRules(body),
   })
-  return { svg, widthMm, heightMm, alternativeText, notes: panels.flatMap(({ drawing }) => drawing.notes) }
+  const notes = panels.flatMap(({ drawing }, index) =>
+    drawing.notes.map((note) => (letters[index] ? `${letters[index]} ${note}` : note)),
+  )
+  return { svg, widthMm, heightMm, alternativeText, notes }
 }
