@@ -28,3 +28,4 @@ export {
 } from "./reading-recipe"
 export { type IntakeCodeName, type Severity, IntakeRefusal, intakeCodes, sentence } from "./intake-codes"
 export { type IntakeLimits, ROWS_PER_PART, intakeLimits } from "./intake-limits"
+export { collectColumns, type CollectedColumn } from "./collect-columns"

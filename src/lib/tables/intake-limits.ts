@@ -27,3 +27,7 @@ export const intakeLimits: IntakeLimits = {
 
 /** Rows of a part of a column: what one chunk holds. */
 export const ROWS_PER_PART = 65_536
+
+/** Rows of a part that a table of so many columns can have: one more than the limit on cells allows in all. */
+export const partRows = (columns: number, limits: IntakeLimits): number =>
+  Math.min(ROWS_PER_PART, Math.floor(limits.maxCells / columns) + 1)

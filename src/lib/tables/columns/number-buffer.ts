@@ -1,19 +1,16 @@
 import { ROWS_PER_PART } from "../intake-limits"
 
 /**
- * The values of one part of a column while rows arrive. Grows with the rows, because a wide table has few of them. A row
- * may be written again before it is kept; missing rows are marked when they are.
+ * The values of one part of a column while rows arrive. A row may be written again before it is kept; missing rows are
+ * marked when they are.
  */
 export class NumberBuffer {
-  values = new Float64Array(1024)
+  readonly values: Float64Array
   #valid: Uint8Array | null = null
 
-  /** Makes room for one more row; returns the array, which may be a new one. */
-  grow(): Float64Array {
-    const larger = new Float64Array(Math.min(ROWS_PER_PART, this.values.length * 4))
-    larger.set(this.values)
-    this.values = larger
-    return larger
+  /** @param capacity rows that a part may have; memory that is never written is never taken */
+  constructor(capacity = ROWS_PER_PART) {
+    this.values = new Float64Array(capacity)
   }
 
   markMissing(row: number): void {

@@ -19,8 +19,9 @@ type Summary = Pick<
 >
 
 export const FIRST_VALUES = 5
-/** Different values are counted up to here. */
+/** Different values are counted up to here, in a wide table to less: the columns share the memory. */
 export const DISTINCT_CAP = 1000
+const DISTINCT_IN_TABLE = 200_000
 
 /** A double as JSON can hold it. */
 export const cellValue = (value: number): CellValue => (Number.isFinite(value) ? value : String(value))
@@ -39,7 +40,13 @@ export class NumberSummary {
   #missing = 0
   #first: CellValue[] = []
   readonly #distinct = new Set<number>()
+  readonly #distinctCap: number
   readonly #sketch = new SketchBuilder()
+
+  /** @param columns columns of the table */
+  constructor(columns: number) {
+    this.#distinctCap = Math.min(DISTINCT_CAP, Math.ceil(DISTINCT_IN_TABLE / columns))
+  }
 
   /** Adds a part and returns it as the chunk to store. */
   add(values: Float64Array, valid: Uint8Array | null): NumberChunk {
@@ -103,7 +110,7 @@ export class NumberSummary {
 
   #addDistinct(values: Float64Array): void {
     let previous = NaN
-    for (let row = 0; row < values.length && this.#distinct.size <= DISTINCT_CAP; row++) {
+    for (let row = 0; row < values.length && this.#distinct.size <= this.#distinctCap; row++) {
       const value = values[row]!
       if (value !== previous && !Number.isNaN(value)) this.#distinct.add(value)
       previous = value
@@ -122,8 +129,8 @@ export class NumberSummary {
       infCount: this.#infinities,
       missingCount: this.#missing,
       firstValues: this.#first,
-      distinctCount: Math.min(this.#distinct.size, DISTINCT_CAP),
-      distinctCapped: this.#distinct.size > DISTINCT_CAP,
+      distinctCount: Math.min(this.#distinct.size, this.#distinctCap),
+      distinctCapped: this.#distinct.size > this.#distinctCap,
       sketch: some ? this.#sketch.shown(this.#min, this.#max) : null,
     }
   }

@@ -15,6 +15,8 @@ export interface OrderFacts {
 }
 
 const MAX_VALUES_OF_STEADY = 2
+/** In a shorter table anything may look steady. */
+const FEWEST_ROWS = 10
 
 /**
  * Follows numeric columns row by row: which of them stay put while time rises, and where time falls although nothing
@@ -24,6 +26,8 @@ export class OrderWatch {
   readonly #time: number
   readonly #numeric: readonly number[]
   readonly #previous: Float64Array
+  /** Last value of a column that is still followed; missing values do not count as a change. */
+  readonly #seen: Float64Array
   readonly #integers: boolean[]
   readonly #falls: Uint32Array
   /** Changes within the present stretch; the column is dropped at the third value. */
@@ -45,6 +49,7 @@ export class OrderWatch {
         kind === "number" && !axes && (told?.role ? told.role === "time" : isTimeName(name)),
     )
     this.#previous = new Float64Array(width).fill(NaN)
+    this.#seen = new Float64Array(width).fill(NaN)
     this.#integers = outputs.map(() => true)
     this.#falls = new Uint32Array(width)
     this.#changes = new Uint8Array(width)
@@ -100,10 +105,11 @@ export class OrderWatch {
     let began = false
     let dropped = false
     for (const index of this.#alive) {
-      const values = columns[index]!
-      const before = row > 0 ? values[row - 1]! : this.#previous[index]!
-      const value = values[row]!
-      if (value === before || value !== value || before !== before) continue
+      const value = columns[index]![row]!
+      const before = this.#seen[index]!
+      if (value === before || value !== value) continue
+      this.#seen[index] = value
+      if (before !== before) continue
       if (fell) {
         began = true
         if (value !== before + 1) this.#counts[index] = false
@@ -125,7 +131,7 @@ export class OrderWatch {
 
   factsOf(index: number): OrderFacts {
     const numeric = this.#numeric.includes(index)
-    const enough = this.#rows >= 4 * (this.#stretches + 1)
+    const enough = this.#rows >= FEWEST_ROWS && this.#rows >= 4 * (this.#stretches + 1)
     return {
       integers: numeric && this.#integers[index]!,
       rises: numeric && this.#falls[index]! <= this.#stretches,

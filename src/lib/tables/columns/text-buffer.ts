@@ -1,12 +1,13 @@
 import { ROWS_PER_PART } from "../intake-limits"
 import type { TextChunk } from "../column-chunk"
 
-const encoder = new TextEncoder()
+const SMALLEST = 8192
+const LARGEST_KEPT = 4 * 1024 * 1024
 
 /** The texts of one part of a column while rows arrive. Rows are only ever appended. */
 export class TextBuffer {
   #offsets = new Uint32Array(1025)
-  #bytes = new Uint8Array(8192)
+  #bytes = Buffer.alloc(SMALLEST)
   #valid: Uint8Array | null = null
   rows = 0
 
@@ -16,18 +17,15 @@ export class TextBuffer {
   }
 
   append(text: string): void {
-    this.appendBytes(encoder.encode(text))
-  }
-
-  appendBytes(text: Uint8Array): void {
-    const end = this.length + text.length
-    if (end > this.#bytes.length) {
-      const larger = new Uint8Array(Math.max(end, this.#bytes.length * 2))
-      larger.set(this.#bytes.subarray(0, this.length))
+    const start = this.length
+    // No UTF-16 unit takes more than three bytes.
+    const most = start + 3 * text.length
+    if (most > this.#bytes.length) {
+      const larger = Buffer.alloc(Math.max(most, this.#bytes.length * 2))
+      this.#bytes.copy(larger, 0, 0, start)
       this.#bytes = larger
     }
-    this.#bytes.set(text, this.length)
-    this.#close(end)
+    this.#close(start + this.#bytes.write(text, start))
   }
 
   appendMissing(): void {
@@ -61,6 +59,6 @@ export class TextBuffer {
     this.rows = 0
     this.#valid = null
     // A part with long texts must not hold its memory for the rest of the file.
-    if (this.#bytes.length > 4 * 1024 * 1024) this.#bytes = new Uint8Array(8192)
+    if (this.#bytes.length > LARGEST_KEPT) this.#bytes = Buffer.alloc(SMALLEST)
   }
 }

@@ -32,6 +32,8 @@ const DECIMAL = new RegExp(`^[+-]?${UNSIGNED}$`)
 const FORTRAN = new RegExp(String.raw`^([+-]?${MANTISSA})[dDqQ]([+-]?\d+)$`)
 /** Fortran drops the letter when the exponent takes three digits. */
 const NO_LETTER = /^([+-]?(?:\d+\.\d*|\.\d+))([+-]\d{3})$/
+/** Everything but a word: signs, digits, points, brackets, stars, and the n and i of nan and inf. */
+const NUMBER_START = /^[\d+\-.,(*nNiI\u2212]/
 const NAN = /^(?:[+-]?nan(?:\(.*\))?|[+-]?1\.#(?:qnan|snan|ind))$/i
 const INFINITE = /^([+-]?)(?:inf|infinity|1\.#inf)$/i
 const COMPLEX = new RegExp(String.raw`^\(?\s*([+-]?${UNSIGNED})\s*(\+?-|\+)\s*(${UNSIGNED})\*?[ijIJ]\)?$`)
@@ -58,6 +60,7 @@ const GROUPED = /^[+-]?\d{1,3}(?:([,.' ])\d{3})(?:\1\d{3})*(?:[.,]\d+)?$/
 export function readCell(text: string, style: CellStyle): Cell {
   if (text.length <= 4 && missingWords.has(text.toLowerCase())) return { kind: "missing", word: text }
   if (text.length > LONGEST_NUMBER) return { kind: "bad", code: "not-a-number" }
+  if (!NUMBER_START.test(text)) return wordCell(text)
   const minus = text.includes("\u2212")
   const plain = minus ? text.replace(/\u2212(?=[\d.])/g, "-") : text
   const pointed = withPoint(plain, style)
@@ -117,9 +120,15 @@ function complexCell(reText: string, imText: string): Cell {
   return { kind: "complex", re: Number(reText), im: Number(imText) }
 }
 
+function wordCell(text: string): Cell {
+  if (BOOLEAN.test(text)) return { kind: "boolean", value: /^\.?t/i.test(text) ? 1 : 0 }
+  return { kind: "bad", code: "not-a-number" }
+}
+
 function otherCell(text: string, style: CellStyle): Cell {
   if (/^\*+$/.test(text)) return { kind: "bad", code: "overflow-stars" }
-  if (BOOLEAN.test(text)) return { kind: "boolean", value: /^\.?t/i.test(text) ? 1 : 0 }
+  const word = wordCell(text)
+  if (word.kind === "boolean") return word
   if (DATETIME.test(text)) return { kind: "datetime" }
   const mixedMarks = style.decimal === "." ? /^[+-]?\d+,\d+$/ : /^[+-]?\d+\.\d+$/
   const grouped = GROUPED.test(text.replace(/[\u00a0\u202f\u2009]/g, " ")) || mixedMarks.test(text)

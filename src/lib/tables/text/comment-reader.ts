@@ -19,7 +19,8 @@ export class CommentReader {
   trailingCount = 0
   readonly trailing: { readonly line: number; readonly text: string }[] = []
   readonly #starts: Set<number>
-  readonly #headerStart: number
+  /** The header up to its first blank. */
+  readonly #headerStart: Buffer
   readonly #lastHeaderLine: number
 
   constructor(
@@ -27,7 +28,7 @@ export class CommentReader {
     readonly journal: IntakeJournal,
   ) {
     this.#starts = new Set(plan.prefixes.map((prefix) => prefix.charCodeAt(0)))
-    this.#headerStart = Buffer.from(plan.headerText ?? "")[0] ?? -1
+    this.#headerStart = Buffer.from(plan.headerText?.split(" ")[0] ?? "")
     this.#lastHeaderLine = Math.max(0, ...plan.headerLines)
   }
 
@@ -44,7 +45,10 @@ export class CommentReader {
   mayRepeatHeader(bytes: Uint8Array, start: number, end: number): boolean {
     let at = start
     while (at < end && (bytes[at] === 32 || bytes[at] === 9)) at++
-    return bytes[at] === this.#headerStart
+    const header = this.#headerStart
+    let same = 0
+    while (same < header.length && bytes[at + same] === header[same]) same++
+    return same === header.length && same > 0
   }
 
   repeatsHeader(text: string, line: number): boolean {

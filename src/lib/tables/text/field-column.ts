@@ -5,6 +5,7 @@ import { NumberSummary } from "../columns/number-summary"
 import { TextBuffer } from "../columns/text-buffer"
 import { TextSummary } from "../columns/text-summary"
 import { type KindCounts, countCell, noCounts } from "./column-evidence"
+import { type IntakeLimits, partRows } from "../intake-limits"
 import type { FieldPlan } from "./text-plan"
 
 /** Told of a cell that is listed as a problem. */
@@ -15,11 +16,11 @@ export type CellReport = (code: IntakeCodeName, text: string, values?: SentenceV
  * through `keep`; what they say is counted, so that the whole file can overrule its sample.
  */
 export class FieldColumn {
-  readonly numbers = new NumberBuffer()
+  readonly numbers: NumberBuffer
   readonly imaginary: NumberBuffer | null
   readonly texts: TextBuffer | null
-  readonly summary = new NumberSummary()
-  readonly imaginarySummary = new NumberSummary()
+  readonly summary: NumberSummary
+  readonly imaginarySummary: NumberSummary
   readonly textSummary = new TextSummary()
   /** What the cells outside the fast way said. */
   readonly counts: KindCounts = noCounts()
@@ -33,8 +34,15 @@ export class FieldColumn {
   constructor(
     readonly plan: FieldPlan,
     readonly style: CellStyle,
+    /** Columns of the table, which share the memory. */
+    columns: number,
+    limits: IntakeLimits,
   ) {
-    this.imaginary = plan.kind === "complex" ? new NumberBuffer() : null
+    const rows = partRows(columns, limits)
+    this.numbers = new NumberBuffer(rows)
+    this.imaginary = plan.kind === "complex" ? new NumberBuffer(rows) : null
+    this.summary = new NumberSummary(columns)
+    this.imaginarySummary = new NumberSummary(columns)
     this.texts = plan.kind === "text" || plan.kind === "datetime" ? new TextBuffer() : null
   }
 

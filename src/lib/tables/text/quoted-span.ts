@@ -1,5 +1,9 @@
 const QUOTE = 34
 
+const isBlank = (byte: number, delimiter: number): boolean => byte === 32 || (byte === 9 && delimiter !== 9)
+const isDelimiter = (byte: number, delimiter: number): boolean =>
+  byte === delimiter || (delimiter === 32 && byte === 9)
+
 /**
  * Follows quotes through `bytes[from..to)`.
  *
@@ -8,13 +12,11 @@ const QUOTE = 34
  * @returns index of the quote that is still open at `to`, -1 when none is
  */
 export function openQuote(bytes: Buffer, from: number, to: number, delimiter: number, open: number): number {
-  const isBlank = (byte: number) => byte === 32 || (byte === 9 && delimiter !== 9)
-  const isDelimiter = (byte: number) => byte === delimiter || (delimiter === 32 && byte === 9)
   let at = from
   let opened = open
   for (;;) {
     if (opened < 0) {
-      while (at < to && isBlank(bytes[at]!)) at++
+      while (at < to && isBlank(bytes[at]!, delimiter)) at++
       if (at >= to) return -1
       if (bytes[at] === QUOTE) opened = at++
     }
@@ -28,7 +30,7 @@ export function openQuote(bytes: Buffer, from: number, to: number, delimiter: nu
       }
       opened = -1
     }
-    while (at < to && !isDelimiter(bytes[at]!)) at++
+    while (at < to && !isDelimiter(bytes[at]!, delimiter)) at++
     if (at >= to) return -1
     at++
   }

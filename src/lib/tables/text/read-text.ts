@@ -13,6 +13,7 @@ import { type PlanRevision, type TextDecision, planText } from "./plan-text"
 import { previewText } from "./preview-text"
 import { reportText } from "./report-text"
 import { RowReader } from "./row-reader"
+import { plannedColumns } from "./text-plan"
 import { type TextSurvey, surveyText } from "./survey-text"
 import { asUtf8 } from "./text-encoding"
 import { textOutputs } from "./text-outputs"
@@ -87,7 +88,13 @@ async function readOnce(
   const decision = planText(survey, recipe, revision, limits, journal)
   const { plan } = decision
   const fields = plan.fields.map(
-    (field) => new FieldColumn(field, { decimal: plan.decimal, thousands: field.thousands }),
+    (field) =>
+      new FieldColumn(
+        field,
+        { decimal: plan.decimal, thousands: field.thousands },
+        plannedColumns(plan),
+        limits,
+      ),
   )
   const buffer = new LineBuffer(limits)
   const reader = new RowReader(plan, fields, buffer, journal, limits)

@@ -9,7 +9,7 @@ const BRACKET = 40
 export const NEEDS_SPLITTER = -1
 
 /**
- * The fast way through a row without quotes and brackets: plain numbers are put into the columns at once, every other
+ * The fast way through a row without doubled quotes and brackets: plain numbers are put into the columns at once, every other
  * cell is noted as a range of bytes for the strict grammar. Nothing counts until the caller keeps the row.
  */
 export class RowParser {
@@ -18,6 +18,8 @@ export class RowParser {
   readonly slowField: Int32Array
   readonly slowStart: Int32Array
   readonly slowEnd: Int32Array
+  /** 1 where the cell stood in quotes, which are cut off. */
+  readonly slowQuoted: Uint8Array
   /** Start of a comment that ends the row, or -1. */
   commentAt = -1
   /** A decimal comma was seen that cannot group thousands. */
@@ -43,6 +45,7 @@ export class RowParser {
     this.slowField = new Int32Array(fields)
     this.slowStart = new Int32Array(fields)
     this.slowEnd = new Int32Array(fields)
+    this.slowQuoted = new Uint8Array(fields)
     this.longValues = new Uint32Array(fields)
   }
 
@@ -67,7 +70,15 @@ export class RowParser {
         this.#note(field, at, at)
         return field + 1
       }
-      if (byte === QUOTE || byte === BRACKET) return NEEDS_SPLITTER
+      if (byte === BRACKET) return NEEDS_SPLITTER
+      if (byte === QUOTE) {
+        at = this.#quoted(bytes, at + 1, end, field, values, row)
+        if (at < 0) return NEEDS_SPLITTER
+        field++
+        if (at >= end) return field
+        if (!blank) at++
+        continue
+      }
       if (blank && byte === HASH) {
         this.commentAt = at
         return field
@@ -100,8 +111,36 @@ export class RowParser {
     }
   }
 
-  #note(field: number, start: number, end: number): void {
+  /** A quoted field without quotes inside, from after its opening quote; returns where it ends, or -1. */
+  #quoted(
+    bytes: Uint8Array,
+    start: number,
+    end: number,
+    field: number,
+    values: readonly Float64Array[],
+    row: number,
+  ): number {
+    let close = start
+    while (close < end && bytes[close] !== QUOTE) close++
+    if (close >= end || (close + 1 < end && bytes[close + 1] === QUOTE)) return -1
+    const tab = this.#delimiter === 9 ? -1 : 9
+    let at = close + 1
+    while (at < end && (bytes[at] === 32 || bytes[at] === tab)) at++
+    if (at < end && (this.#blank ? at === close + 1 : bytes[at] !== this.#delimiter)) return -1
+    if (field < this.#fields && this.#plain[field] === 1) {
+      const value = scanDouble(bytes, start, close, this.#mark)
+      if (scan.end === close && close > start && this.#isOrdinary(value, field)) {
+        values[field]![row] = value
+        return at
+      }
+    }
+    this.#note(field, start, close, 1)
+    return at
+  }
+
+  #note(field: number, start: number, end: number, quoted: 0 | 1 = 0): void {
     if (field >= this.#fields) return
+    this.slowQuoted[this.slow] = quoted
     this.slowField[this.slow] = field
     this.slowStart[this.slow] = start
     this.slowEnd[this.slow] = end

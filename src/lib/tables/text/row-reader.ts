@@ -10,8 +10,6 @@ import { SegmentCounter } from "./segment-counter"
 import { type Field, delimiterText, splitLine, trimBlanks } from "./split-line"
 import { type TextPlan, plannedColumns } from "./text-plan"
 
-type CellPlace = readonly [start: number, end: number]
-
 /**
  * Reads lines into columns by a plan. Every physical line ends in exactly one of the counts of `lines`. `run` stops when
  * a part is full; the caller then empties the columns and goes on.
@@ -37,8 +35,7 @@ export class RowReader {
   keptRows = 0
   paddedRows = 0
   quotedBreaks = 0
-  #values: Float64Array[]
-  #capacity: number
+  readonly #values: readonly Float64Array[]
   #blankRun = 0
   readonly #delimiter: number
   readonly #maxRows: number
@@ -51,10 +48,9 @@ export class RowReader {
     readonly limits: IntakeLimits,
   ) {
     this.parser = new RowParser(plan)
-    this.segments = new SegmentCounter(plan)
+    this.segments = new SegmentCounter(plan, limits)
     this.comments = new CommentReader(plan, journal)
     this.#values = fields.map(({ numbers }) => numbers.values)
-    this.#capacity = this.#values[0]?.length ?? 0
     this.#delimiter = plan.delimiter === "blank" ? 32 : delimiterText(plan.delimiter).charCodeAt(0)
     this.#maxRows = Math.floor(limits.maxCells / plannedColumns(plan))
   }
@@ -157,7 +153,6 @@ export class RowReader {
       this.lines.skipped += buffer.span
       return
     }
-    if (this.row >= this.#capacity) this.#grow()
     const count = parser.parse(buffer.bytes, buffer.start, buffer.end, this.#values, this.row)
     if (count === NEEDS_SPLITTER) return this.#splitRow()
     const trailing = plan.trailingDelimiter && count === plan.fields.length + 1 && this.#endsWithDelimiter()
@@ -167,15 +162,11 @@ export class RowReader {
     if (parser.commentAt >= 0)
       this.comments.addTrailing(buffer.bytes.toString("utf8", parser.commentAt, buffer.end), buffer.line)
     for (let slow = 0; slow < parser.slow; slow++) {
-      const range: CellPlace = [parser.slowStart[slow]!, parser.slowEnd[slow]!]
-      this.#cell(parser.slowField[slow]!, this.#cellText(range))
+      const text = buffer.bytes.toString("utf8", parser.slowStart[slow]!, parser.slowEnd[slow]!)
+      this.#cell(parser.slowField[slow]!, parser.slowQuoted[slow] ? text : trimBlanks(text))
     }
     for (let field = found; field < plan.fields.length; field++) this.#cell(field, "")
     this.#kept()
-  }
-
-  #cellText([start, end]: CellPlace): string {
-    return start === end ? "" : trimBlanks(this.buffer.bytes.toString("utf8", start, end))
   }
 
   /** The general way: quotes, brackets, blanks outside ASCII. */
@@ -219,15 +210,15 @@ export class RowReader {
 
   #kept(): void {
     const { buffer, lines } = this
-    this.segments.keep(this.row, this.#values)
-    this.rowLines[this.row++] = buffer.line
-    lines.rows += buffer.span
-    if (buffer.span > 1) this.quotedBreaks++
     if (++this.keptRows > this.#maxRows)
       throw new IntakeRefusal("too-many-cells", {
         n: this.keptRows * plannedColumns(this.plan),
         max: this.limits.maxCells,
       })
+    this.segments.keep(this.row, this.#values)
+    this.rowLines[this.row++] = buffer.line
+    lines.rows += buffer.span
+    if (buffer.span > 1) this.quotedBreaks++
   }
 
   #setAside(count: number): void {
@@ -271,15 +262,5 @@ export class RowReader {
     let at = this.buffer.end - 1
     while (at > start && (bytes[at] === 32 || (bytes[at] === 9 && this.#delimiter !== 9))) at--
     return bytes[at] === this.#delimiter
-  }
-
-  #grow(): void {
-    for (const column of this.fields) {
-      column.numbers.grow()
-      column.imaginary?.grow()
-    }
-    this.segments.numbers.grow()
-    this.#values = this.fields.map(({ numbers }) => numbers.values)
-    this.#capacity = this.#values[0]!.length
   }
 }

@@ -1,15 +1,16 @@
 import { NumberBuffer } from "../columns/number-buffer"
 import { NumberSummary } from "../columns/number-summary"
 import { isTimeName } from "../names/time-names"
-import type { TextPlan } from "./text-plan"
+import { type IntakeLimits, partRows } from "../intake-limits"
+import { type TextPlan, plannedColumns } from "./text-plan"
 
 /**
  * Counts the segments of a text table: blocks between blank lines, stretches between repeated headers, runs in which
  * time rises. Their number becomes the leading column when the plan has one.
  */
 export class SegmentCounter {
-  readonly numbers = new NumberBuffer()
-  readonly summary = new NumberSummary()
+  readonly numbers: NumberBuffer
+  readonly summary = new NumberSummary(1)
   /** Number of the present segment. */
   segment = 0
   /** Two blank lines were seen between rows, whether or not the plan cares. */
@@ -23,7 +24,11 @@ export class SegmentCounter {
   #any = false
   #blockKept = false
 
-  constructor(readonly plan: TextPlan) {
+  constructor(
+    readonly plan: TextPlan,
+    limits: IntakeLimits,
+  ) {
+    this.numbers = new NumberBuffer(partRows(plannedColumns(plan), limits))
     this.#timeField =
       plan.segments?.by === "time-goes-back" ? plan.fields.findIndex(({ name }) => isTimeName(name)) : -1
   }

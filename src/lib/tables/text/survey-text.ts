@@ -58,7 +58,10 @@ export async function surveyText(
     }
     size += piece.length
     if (size > limits.maxBytes) throw new IntakeRefusal("file-too-large", { n: size, max: limits.maxBytes })
-    tail = Buffer.concat([tail, piece.subarray(-PIECE)]).subarray(-PIECE)
+    tail = Buffer.concat([
+      piece.length < PIECE ? tail : tail.subarray(0, 0),
+      piece.subarray(-PIECE),
+    ]).subarray(-PIECE)
   }
   if (size === 0) throw new IntakeRefusal("empty-file")
   const start = Buffer.concat(head)
