@@ -1,4 +1,6 @@
 export { renderFigure, type RenderedFigure } from "./figure/render-figure"
+export { svgToEps } from "./formats/eps"
+export { svgToPdf } from "./formats/pdf"
 export { svgToPng, svgToTiff } from "./formats/raster"
 export { renderingVersions, type RenderingVersions } from "./rendering-versions"
 export type { MathBox } from "./typeset/set-formula"

@@ -3,21 +3,13 @@ import type { FigureSpec } from "@specs/figure-spec"
 
 type Panel = FigureSpec["panels"][number]
 
-/** The tracks of the grid that a panel covers: columns for a shared x, rows for a shared y. */
-function tracksOf({ place }: Panel, axis: "x" | "y"): readonly [first: number, last: number] {
-  return axis === "x"
-    ? [place.column, place.column + place.columnSpan - 1]
-    : [place.row, place.row + place.rowSpan - 1]
-}
+/** The columns of the grid that a panel covers, or its rows: panels that cover the same ones have frames in line. */
+const tracks = ({ place }: Panel, axis: "x" | "y"): string =>
+  axis === "x" ? `${place.column}+${place.columnSpan}` : `${place.row}+${place.rowSpan}`
 
-/** Panels that show one domain along an axis: those that have a column of the grid in common for x, a row for y. */
-function inLine(panels: readonly Panel[], axis: "x" | "y", index: number): readonly number[] {
-  const [first, last] = tracksOf(panels[index]!, axis)
-  return panels.flatMap((panel, other) => {
-    const [from, to] = tracksOf(panel, axis)
-    return from <= last && to >= first ? [other] : []
-  })
-}
+/** Panels that share an axis with one: the same frame edges, so that a value stands at the same place in all. */
+const inLine = (panels: readonly Panel[], axis: "x" | "y", index: number): readonly number[] =>
+  panels.flatMap((panel, other) => (tracks(panel, axis) === tracks(panels[index]!, axis) ? [other] : []))
 
 /**
  * The panels of a figure with shared axes: each gets the widest domain of those it shares an axis with.
