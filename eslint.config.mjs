@@ -18,6 +18,7 @@ const layers = {
   "src/lib/domain": ["src/lib/stats"],
   "figure-specs": ["src/lib/stats", "src/lib/domain"],
   "src/lib/render": ["figure-specs", "src/lib/domain", "src/lib/stats"],
+  "src/lib/bundle": ["figure-specs", "src/lib/tables", "src/lib/render", "src/lib/domain", "src/lib/stats"],
   "src/lib/contracts": ["src/lib/domain", "figure-specs"],
   "src/lib/client": ["src/lib/contracts", "figure-specs", "src/lib/domain", "src/lib/stats"],
   "src/components": ["src/lib/client", "src/lib/contracts", "src/lib/domain", "figure-specs"],

@@ -10,7 +10,8 @@ export const programs = {
   worker: "src/lib/server/jobs/worker.ts",
   migrate: "src/lib/server/db/migrate.ts",
   "read-table": "src/lib/server/jobs/read-table-process.ts",
-  "compute-figure": "src/lib/server/jobs/compute-figure-thread.ts",
+  "compute-figure": "src/lib/server/jobs/compute-figure-process.ts",
+  "make-bundle": "src/lib/server/jobs/make-bundle-process.ts",
   local: "src/lib/server/local/local.ts",
   "seed-demo": "scripts/seed-demo.ts",
 }

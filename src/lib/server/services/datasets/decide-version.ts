@@ -76,15 +76,21 @@ export async function changeDatasetVersion(
 export async function acceptDatasetVersion(db: Db, place: Place, personId: string) {
   await db.transaction().execute(async (trx) => {
     const id = await lockProposed(trx, place)
-    const { state } = await trx
+    const { state, reading } = await trx
       .selectFrom("datasetVersion")
-      .select("state")
+      .select(["state", "reading"])
       .where("id", "=", id)
       .executeTakeFirstOrThrow()
     if (state !== "proposed")
       throw new Problem(
         "conflict",
         "This version could not be read; correct the recipe or upload the file again.",
+      )
+    const { asks = [] } = (reading ?? {}) as { asks?: { message: string }[] }
+    if (asks.length > 0)
+      throw new Problem(
+        "conflict",
+        `A question about the file is open: ${asks.map((ask) => ask.message).join(" ")}`,
       )
     await trx
       .updateTable("datasetVersion")
