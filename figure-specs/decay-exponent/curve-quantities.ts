@@ -19,7 +19,7 @@ export function curveQuantities(
   const facts: Omit<Provenance, "sentence"> = {
     estimator: "weighted least squares of ln mean on ln t",
     weights: prepared.origin === "no-errors" ? "equal" : fit.weights,
-    window: [Math.exp(x[from]!), Math.exp(x[to - 1]!)],
+    window: evidence.window,
     decades: decadesOf(x, from, to),
     points: to - from,
     ...(trajectories > 0 ? { trajectories } : {}),

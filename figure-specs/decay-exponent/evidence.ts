@@ -27,6 +27,8 @@ export interface Evidence {
   readonly line: LogLine
   readonly from: number
   readonly to: number
+  /** First and last abscissa of the fit. */
+  readonly window: readonly [number, number]
   /** Standard errors of slope and level, and their covariance; null when no error exists. */
   readonly errors: { readonly slope: number; readonly level: number; readonly covariance: number } | null
   readonly slopeInterval: Interval | null
@@ -40,6 +42,12 @@ export interface Evidence {
 
 /** Trajectories below which no interval is given. @see docs/methods.md, thresholds */
 const fewestForInterval = 5
+
+/** Ends of a stretch of ln t, without the dust that taking the logarithm and back leaves in the last digits. */
+const windowOf = (x: Float64Array, from: number, to: number): readonly [number, number] => {
+  const tidy = (lnT: number) => Number(Math.exp(lnT).toPrecision(12))
+  return [tidy(x[from]!), tidy(x[to - 1]!)]
+}
 
 /** The fit of one curve with its errors, or the warning that says why there is none. */
 export function evidenceOf(
@@ -63,6 +71,7 @@ export function evidenceOf(
       line: fitted,
       from,
       to,
+      window: windowOf(moments.x, from, to),
       errors: null,
       slopeInterval: null,
       logAmplitudeInterval: null,
@@ -76,6 +85,7 @@ export function evidenceOf(
     line: fitted,
     from,
     to,
+    window: windowOf(moments.x, from, to),
     errors: {
       slope: errors.slope.standardError,
       level: errors.level.standardError,
@@ -170,6 +180,7 @@ function givenEvidence(
     line,
     from,
     to,
+    window: windowOf(x, from, to),
     errors,
     slopeInterval: around(line.slope, factor * errors.slope, level, "analytic"),
     logAmplitudeInterval: around(

@@ -61,7 +61,7 @@ function drawLine(prepared: PreparedCurve, evidence: Evidence, withBand: boolean
   return {
     exponent: line.slope,
     amplitude: Math.exp(at(0)),
-    window: [Math.exp(first), Math.exp(last)],
+    window: evidence.window,
     grid: grid.map(Math.exp),
     line: grid.map((lnT) => Math.exp(at(lnT))),
     bandLow: band(-1),

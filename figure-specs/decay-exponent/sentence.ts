@@ -85,7 +85,7 @@ export function decaySentence(params: DecayExponentParams, result?: DecayResult)
       "the column that numbers the trajectories; none when the table holds values with errors",
       column("trajectory", true),
     ),
-    words(data.columns.trajectory ? " with " : " with "),
+    words(" with "),
     data.columns.trajectory
       ? slot(
           "/reduction/uncertainty",
@@ -109,10 +109,10 @@ export function decaySentence(params: DecayExponentParams, result?: DecayResult)
       "logarithmic bins a decade, 3 to 30; empty for every time",
       { type: "number", min: 3, max: 30, step: 1 },
     ),
-    words(", one curve per "),
+    words(data.curveBy === null ? ", as " : ", one curve per "),
     slot(
       "/data/curveBy",
-      data.curveBy ?? "table",
+      data.curveBy ?? "one curve",
       "a parameter column; none for one curve",
       column("parameter", true),
     ),
