@@ -14,7 +14,7 @@ function pdfCanvas(doc: PDFKit.PDFDocument): DrawingCanvas {
     doc.lineWidth(paint.width).lineCap(paint.cap).lineJoin(paint.join).miterLimit(paint.miterLimit)
     // pdfkit's own dash() takes two lengths only.
     doc.addContent(`[${paint.dash.join(" ")}] 0 d`)
-    doc.strokeColor(rgb(paint.stroke!), paint.strokeOpacity)
+    doc.strokeColor(rgb(paint.stroke!))
   }
   return {
     save: () => void doc.save(),
@@ -27,12 +27,16 @@ function pdfCanvas(doc: PDFKit.PDFDocument): DrawingCanvas {
     path(trace, paint) {
       const stroked = paint.stroke !== null && paint.width > 0
       if (!paint.fill && !stroked) return
-      if (paint.fill) doc.fillColor(rgb(paint.fill), paint.fillOpacity)
+      const { fillOpacity, strokeOpacity } = paint
+      const transparent = (paint.fill && fillOpacity < 1) || (stroked && strokeOpacity < 1)
+      if (transparent) doc.save().fillOpacity(fillOpacity).strokeOpacity(strokeOpacity)
+      if (paint.fill) doc.fillColor(rgb(paint.fill))
       if (stroked) stroke(paint)
       trace(doc as unknown as Parameters<Trace>[0])
       if (paint.fill && stroked) doc.fillAndStroke()
       else if (paint.fill) doc.fill()
       else doc.stroke()
+      if (transparent) doc.restore()
     },
     text({ text, x, y, family, sizePt, bold, italic }, paint) {
       if (!paint.fill) return
@@ -40,7 +44,7 @@ function pdfCanvas(doc: PDFKit.PDFDocument): DrawingCanvas {
       if (!face) throw new Error(`“${family}” is not one of the figure fonts.`)
       doc.registerFont(face.file, fontBytes(face))
       doc.font(face.file).fontSize(sizePt)
-      doc.fillColor(rgb(paint.fill), paint.fillOpacity)
+      doc.fillColor(rgb(paint.fill))
       let pen = x
       for (const run of scriptRuns(text)) {
         doc.text(run, pen, y, { lineBreak: false, baseline: "alphabetic" })

@@ -1,5 +1,6 @@
 import * as vega from "vega"
 import type { Ink } from "@specs/chart/free-place"
+import { written } from "@specs/chart/position"
 import { sceneInk, type SceneMark } from "@specs/chart/scene-ink"
 import { useFigureRenderer } from "./figure-renderer"
 
@@ -68,6 +69,10 @@ async function draw(spec: vega.Spec, prefix: string): Promise<DrawnMarks> {
       .replace(/<\/svg>$/, "")
       .replace(/\bid="(clip\d+)"/g, `id="${prefix}$1"`)
       .replace(/url\(#(clip\d+)\)/g, `url(#${prefix}$1)`)
+      .replace(
+        /translate\(([^,)]+),([^)]+)\)/g,
+        (_, x, y) => `translate(${written(Number(x))},${written(Number(y))})`,
+      )
       // Vega's own frame and background are drawn by the layout, or not at all.
       .replace(/<path class="(?:background|foreground)"[^>]*(?:\/>|><\/path>)/g, "")
       .replace(/ (?:class|role|aria-[a-z]+)="[^"]*"/g, "")
