@@ -4,10 +4,11 @@ import type { MeasureLabel, TextShape } from "@specs/chart/shape"
 import { marginsOf, surroundingTexts, type Margins } from "@specs/chart/surroundings"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
+import type { AnyKind } from "@specs/kinds"
+import type { PanelParams } from "@specs/registry"
 import { SpecError } from "@specs/spec-error"
 import { gridFrames, type FrameRect } from "./grid-frames"
 import { pointsPerMm } from "./outer-svg"
-import type { PanelBuilders } from "./panel-builders"
 import { withoutRepeatedLabels, withSharedDomains } from "./shared-axes"
 
 /** Free space at the rim of the page. */
@@ -28,19 +29,17 @@ interface Setting {
   readonly results: readonly PanelResult[]
   /** Look of each panel. */
   readonly looks: readonly Look[]
-  readonly builders: PanelBuilders
+  readonly kindOf: (kind: PanelParams["kind"]) => Pick<AnyKind, "build">
   readonly measure: MeasureLabel
 }
 
 /** Draws all panels for given frames; kinds choose ticks by the room that they have. */
-function drawAll({ spec, results, builders }: Setting, frames: readonly Frame[]): readonly PanelDrawing[] {
+function drawAll({ spec, results, kindOf }: Setting, frames: readonly Frame[]): readonly PanelDrawing[] {
   const draw = (panels: FigureSpec["panels"]) =>
     panels.map((panel, index) => {
-      const builder = builders[panel.kind]
       const result = results[index]
-      if (!builder) throw new Error(`The kind ${panel.kind} cannot be drawn.`)
       if (!result) throw new Error(`Panel ${index + 1} has no result.`)
-      return builder(result, panel, frames[index]!)
+      return kindOf(panel.kind).build(result, panel, frames[index]!)
     })
   const alone = draw(spec.panels)
   if (!spec.grid.shareX && !spec.grid.shareY) return alone

@@ -5,6 +5,7 @@ import { defaultLook } from "@specs/chart/look"
 import { patchLook, readLookPatch, type LookPatch } from "@specs/chart/look-patch"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
+import { kindOf } from "@specs/kinds"
 import { SpecError } from "@specs/spec-error"
 import { drawMarks, type DrawnMarks } from "../panel/draw-marks"
 import { fontRules } from "../svg/embed-fonts"
@@ -13,7 +14,6 @@ import { checkLabels } from "./check-labels"
 import { checkPlaces } from "./check-places"
 import { layOut } from "./lay-out"
 import { outerSvg } from "./outer-svg"
-import { panelBuilders, type PanelBuilders } from "./panel-builders"
 import { letterShapes, panelLetters } from "./panel-letters"
 import { movedSvg, shapesSvg } from "./shape-svg"
 
@@ -53,14 +53,14 @@ function repeated(legends: readonly { readonly entries: readonly unknown[] }[], 
 export async function renderFigure(
   spec: FigureSpec,
   results: readonly PanelResult[],
-  { look: changes = {}, builders = panelBuilders }: { look?: LookPatch; builders?: PanelBuilders } = {},
+  { look: changes = {} }: { look?: LookPatch } = {},
 ): Promise<RenderedFigure> {
   const look = patchLook(defaultLook, changes)
   const typesetter = await typesetterFor(look.fontFamily)
   const { measure } = typesetter
   checkPlaces(spec)
   checkLabels(spec, typesetter)
-  const panels = layOut({ spec, results, looks: panelLooks(spec, look), builders, measure })
+  const panels = layOut({ spec, results, looks: panelLooks(spec, look), kindOf, measure })
   const marks: DrawnMarks[] = []
   for (const [index, { drawing }] of panels.entries())
     marks.push(await drawMarks(drawing.spec, `panel-${index + 1}-`))
