@@ -58,6 +58,27 @@ const decay = (window: [number, number], bins: number, title: string): FigureSpe
   ],
 })
 
+const growth: FigureSpecInput = {
+  version: 1,
+  title: "Roughening of the interface",
+  size: { widthMm: 86, heightMm: 66 },
+  panels: [
+    {
+      kind: "decay-exponent",
+      data: {
+        dataset: "growth",
+        columns: { trajectory: "run", time: "t", observable: "w2" },
+        where: [{ column: "L", equals: 2048 }],
+      },
+      reduction: { bins: { perDecade: 8 } },
+      fit: { window: [30, null] },
+      references: [{ exponent: 2 / 3, label: "$t^{2/3}$" }],
+      axes: { y: { label: "$\\langle w^2(t)\\rangle$" } },
+      quantities: [{ name: "twoBeta", of: "exponent", theory: { value: 2 / 3, label: "KPZ" } }],
+    },
+  ],
+}
+
 /** What the demo manuscript holds. Every exponent in it has an exact value known from the literature. */
 export const demoContent: DemoContent = {
   manuscript: {
@@ -110,6 +131,15 @@ export const demoContent: DemoContent = {
         },
       ],
       pinned: 2,
+    },
+    {
+      name: "width-growth",
+      title: "Roughening of the interface",
+      caption:
+        "Squared width of the growing interface on a ring of 2048 sites, so large that its size is not felt. The exponent of $w^2$ is $2\\beta$.",
+      versions: [{ by: 1, message: "Largest ring only", spec: growth }],
+      threads: [],
+      pinned: 1,
     },
   ],
 }
