@@ -1,4 +1,3 @@
-import { jsonArrayFrom } from "kysely/helpers/postgres"
 import type { z } from "zod"
 import type { anchor, startThread as startContract } from "@/lib/contracts/threads"
 import { Problem } from "@/lib/contracts/problems"
@@ -28,48 +27,44 @@ function threads(db: Db) {
       "settler.id as settlerId",
       "settler.name as settlerName",
     ])
-    .select((eb) => [
-      eb.ref("thread.anchor").$castTo<z.output<typeof anchor> | null>().as("anchor"),
-      jsonArrayFrom(
-        eb
-          .selectFrom("comment")
-          .innerJoin("person", "person.id", "comment.authorId")
-          .select([
-            "comment.id",
-            "comment.body",
-            "comment.createdAt",
-            "comment.editedAt",
-            "person.id as authorId",
-            "person.name as authorName",
-          ])
-          .whereRef("comment.threadId", "=", "thread.id")
-          .orderBy("comment.id"),
-      ).as("comments"),
-    ])
+    .select((eb) => [eb.ref("thread.anchor").$castTo<z.output<typeof anchor> | null>().as("anchor")])
     .orderBy("thread.id")
 }
 
 type Row = Awaited<ReturnType<ReturnType<typeof threads>["executeTakeFirstOrThrow"]>>
 
-function present({ starterId, starterName, settlerId, settlerName, comments, ...row }: Row) {
-  return {
+/** Threads with their comments, oldest first. */
+async function withComments(db: Db, rows: readonly Row[]) {
+  if (rows.length === 0) return []
+  const comments = await db
+    .selectFrom("comment")
+    .innerJoin("person", "person.id", "comment.authorId")
+    .select(["comment.id", "comment.threadId", "comment.body", "comment.createdAt", "comment.editedAt"])
+    .select(["person.id as authorId", "person.name as authorName"])
+    .where(
+      "comment.threadId",
+      "in",
+      rows.map((row) => row.id),
+    )
+    .orderBy("comment.id")
+    .execute()
+  return rows.map(({ starterId, starterName, settlerId, settlerName, ...row }) => ({
     ...row,
     createdBy: { id: starterId, name: starterName },
     resolvedBy: settlerId && settlerName ? { id: settlerId, name: settlerName } : null,
-    comments: comments.map(({ authorId, authorName, createdAt, editedAt, ...comment }) => ({
-      ...comment,
-      author: { id: authorId, name: authorName },
-      // Out of a JSON aggregate dates come as texts with an offset.
-      createdAt: new Date(createdAt),
-      editedAt: editedAt === null ? null : new Date(editedAt),
-    })),
-  }
+    comments: comments
+      .filter((comment) => comment.threadId === row.id)
+      .map(({ authorId, authorName, threadId: _, ...comment }) => ({
+        ...comment,
+        author: { id: authorId, name: authorName },
+      })),
+  }))
 }
 
 /** The threads on a figure version, oldest first. @throws Problem `not-found` */
 export async function listThreads(db: Db, manuscriptId: string, figureId: string, number: number) {
   const version = await getVersionRow(db, manuscriptId, figureId, number)
-  return (await threads(db).where("thread.figureVersionId", "=", version.id).execute()).map(present)
+  return withComments(db, await threads(db).where("thread.figureVersionId", "=", version.id).execute())
 }
 
 async function getThread(db: Db, manuscriptId: string, threadId: string) {
@@ -78,7 +73,8 @@ async function getThread(db: Db, manuscriptId: string, threadId: string) {
     .where("figure.manuscriptId", "=", manuscriptId)
     .executeTakeFirst()
   if (!row) throw new Problem("not-found", "There is no such thread.")
-  return present(row)
+  const [thread] = await withComments(db, [row])
+  return thread!
 }
 
 /** Starts a thread with its first comment; the others concerned get a mail. */
