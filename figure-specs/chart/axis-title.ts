@@ -11,11 +11,11 @@ export const symbolOf = ({ symbol, name }: NamedColumn): string | null =>
   symbol ?? (/^[A-Za-z]$/.test(name) ? name : null)
 
 /**
- * A unit as it is set after a symbol. The scale of a model (1/J) is a symbol and slanted; units of measure are upright,
- * their powers raised.
+ * A unit as it is set after a symbol. The scale of a model (J, 1/J) is a symbol and slanted; units of measure are upright,
+ * their powers raised. J is taken for a coupling: joules are rare among lattice models.
  */
 export function unitLabel(unit: string): string {
-  if (/^(1\/)?[A-ZΑ-ω]$/u.test(unit) && !["V", "A", "K", "N", "W", "J", "T", "C", "F", "H"].includes(unit))
+  if (/^(1\/)?[A-ZΑ-ω]$/u.test(unit) && !["V", "A", "K", "N", "W", "T", "C", "F", "H"].includes(unit))
     return `$${unit}$`
   if (!/[\\^_{]/.test(unit)) return unit
   const raised = unit.replace(/\^(?:\{([^}]*)\}|([+-]?\d+))/g, (_, braced, plain) => `^{${braced ?? plain}}`)

@@ -59,19 +59,16 @@ function fitLabel(
     return { x: at.x(t), y: at.y(amplitude * t ** power) }
   }
   const text = `$\\propto ${decayTitles(result).timeTex}^{${exponent.tex}}$`
-  const along = (side: "above" | "below") =>
-    labelAlong(text, fitColor, { from: point(0.1), to: point(0.9), side }, 5)
-  const places = [...along("below").places, ...along("above").places]
-  return [
-    {
-      ...along("below"),
-      places: places.map((place) => ({
-        ...place,
-        angle: 0,
-        align: place.baseline === "top" ? "right" : "left",
-      })),
-    },
-  ]
+  const falling = power < 0
+  const places = (["below", "above"] as const).flatMap((side) =>
+    labelAlong(text, fitColor, { from: point(0.1), to: point(0.9), side }, 5).places.map((place) => ({
+      ...place,
+      // Upright beside a slanted line, a label must hang on the side that the line leaves free.
+      angle: 0,
+      align: (side === "below") === falling ? ("right" as const) : ("left" as const),
+    })),
+  )
+  return [{ text, color: fitColor, small: true, places }]
 }
 
 function legendOf(result: DecayResult, { look }: Frame, drawn: readonly DrawnCurve[]): Legend {
