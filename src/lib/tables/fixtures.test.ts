@@ -40,7 +40,7 @@ interface Expected {
   readonly headerLines?: readonly number[]
 }
 
-const only = /\.(csv|tsv|txt|dat)$/
+const only = /\.(csv|tsv|txt|dat|gz|npy|npz)$/
 const names = readdirSync(folder)
   .filter((name) => name.endsWith(".expected.json"))
   .map((name) => name.replace(".expected.json", ""))

@@ -15,7 +15,7 @@ export const intakeCodes = {
   "header-only": refuse("A header ({names}) but no data row."),
   "no-table": refuse("No table was found in the file."),
   "too-many-cells": refuse("This is {n} cells; the limit is {max}. Nothing was stored."),
-  "too-many-columns": refuse("Line {line} has more than {max} columns. Nothing was stored."),
+  "too-many-columns": refuse("There are more than {max} columns{place}. Nothing was stored."),
   "line-too-long": refuse("Line {line} is longer than {max} bytes. Nothing was stored."),
   "too-much-text": refuse("{max} bytes of text in 65,536 rows is the limit. Nothing was stored."),
   "recipe-mismatch": refuse("The recipe describes {k} columns; the file has {n}."),
@@ -25,7 +25,7 @@ export const intakeCodes = {
 
   // Compression and archives
   gzip: note("Unpacked with gzip."),
-  "gzip-nested": refuse("A gzip file inside a gzip file is not unpacked."),
+  "gzip-nested": refuse("An archive inside an archive is not unpacked."),
   "gzip-damaged": refuse(
     "The compressed data is damaged or cut off after {n} bytes; nothing from it was used.",
   ),
@@ -35,6 +35,7 @@ export const intakeCodes = {
   "zip-method": problem("Entry {name} is encrypted or packed by method {method}; not read."),
   "zip-entry-name": problem("Entry {name} not read: its name points outside the archive."),
   "zip-entry-type": problem("Entry {name} not read: it is not an array."),
+  "zip-no-entry": refuse("The archive has no table {name}."),
   "zip-table": note("Read from entry {name} of the archive."),
   "zip-tables": ask("The archive holds {n} tables; choose one."),
 
@@ -102,7 +103,9 @@ export const intakeCodes = {
   ),
   overflow: problem("Line {line}, {column}: “{text}” is outside the range of doubles; left missing."),
   underflow: problem("Line {line}, {column}: “{text}” is outside the range of doubles; left missing."),
-  "integer-precision": problem("{column}: “{text}” has more digits than a double keeps and becomes {value}."),
+  "integer-precision": problem(
+    "{column}: “{text}”{more} has more digits than a double keeps and becomes {value}.",
+  ),
   "decimal-precision": problem("{column}: decimals of {n} digits do not fit a double; not read."),
   "fortran-exponent": note("{column}: {n} values have the exponent letter D or Q."),
   "missing-exponent-letter": note("{column}: the exponent letter of {n} values is missing."),

@@ -48,6 +48,8 @@ export interface ReadingRecipe {
   readonly segments: { readonly by: SegmentMark; readonly column: string } | null
   /** Read this block only, counted from 0. */
   readonly block: number | null
+  /** Two-dimensional arrays that are read as tables, one column of values for each of theirs; by name. */
+  readonly tables: readonly string[] | null
   readonly columns: readonly RecipeColumn[] | null
 }
 
@@ -115,6 +117,7 @@ const fields = new Map<string, Check>([
   ["skipLines", check(listOf(isRange, 10_000), "a list of [first, last] line numbers")],
   ["padShortRows", check((value) => typeof value === "boolean", "true or false")],
   ["segments", check(isSegments, "{ by, column }")],
+  ["tables", check(listOf(isText, 1000), "a list of names of arrays")],
   ["block", check(isCount, "a block number from 0")],
 ])
 

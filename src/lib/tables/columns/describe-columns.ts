@@ -5,11 +5,11 @@ import type { OutputColumn } from "./output-column"
 
 /** What a sink learns of the columns before their values. */
 export const describeColumns = (outputs: readonly OutputColumn[]): ColumnDescription[] =>
-  outputs.map(({ name, unit, kind, axes, told }, index) => ({
+  outputs.map(({ name, unit, symbol, kind, axes, told }, index) => ({
     index,
     name,
     unit,
-    symbol: told?.symbol ?? (isPlainName(name) && kind !== "text" ? texSymbol(name) : null),
+    symbol: told?.symbol ?? symbol ?? (isPlainName(name) && kind !== "text" ? texSymbol(name) : null),
     kind,
     axes,
   }))

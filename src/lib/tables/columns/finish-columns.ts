@@ -2,13 +2,13 @@ import type { IntakeJournal } from "../intake-journal"
 import { proposeRoles } from "../names/propose-roles"
 import type { ColumnReading } from "../table-reading"
 import { describeColumns } from "./describe-columns"
-import type { OrderWatch } from "./order-watch"
+import type { OrderFacts } from "./order-watch"
 import type { OutputColumn } from "./output-column"
 
 /** The columns as they are reported: summaries, proposed roles, and questions about suspicious values. */
 export function finishColumns(
   outputs: readonly OutputColumn[],
-  watch: OrderWatch,
+  factsOf: (index: number) => OrderFacts,
   journal: IntakeJournal,
 ): ColumnReading[] {
   const summaries = outputs.map((output) => output.summary())
@@ -17,8 +17,9 @@ export function finishColumns(
       name: output.name,
       kind: output.kind,
       place: output.place,
+      axes: output.axes,
       told: output.told?.role ?? null,
-      facts: watch.factsOf(index),
+      facts: factsOf(index),
       summary: summaries[index]!,
     })),
   )

@@ -1,4 +1,3 @@
-import type { ColumnChunk } from "../column-chunk"
 import type { RecipeColumn } from "../reading-recipe"
 import type { ArrayAxis, ColumnKind, ColumnReading } from "../table-reading"
 import type { SentinelWatch } from "./sentinel-watch"
@@ -21,6 +20,8 @@ export type ColumnSummary = Omit<
 export interface OutputColumn {
   readonly name: string
   readonly unit: string | null
+  /** TeX that the file gives; else it is made from the name. */
+  readonly symbol: string | null
   readonly kind: ColumnKind
   readonly axes: readonly ArrayAxis[] | null
   readonly longName: string | null
@@ -28,8 +29,6 @@ export interface OutputColumn {
   readonly place: number | null
   /** What the recipe says of it. */
   readonly told: Partial<RecipeColumn> | undefined
-  /** Adds the present part to the summary and returns it. */
-  take(rows: number): ColumnChunk
   summary(): ColumnSummary
   readonly sentinels: SentinelWatch | null
 }

@@ -1,6 +1,6 @@
 import type { OrderFacts } from "../columns/order-watch"
 import type { ColumnSummary } from "../columns/output-column"
-import type { ColumnKind, ColumnRole } from "../table-reading"
+import type { ArrayAxis, ColumnKind, ColumnRole } from "../table-reading"
 import { isTimeName, timeRank } from "./time-names"
 
 export interface RoleCandidate {
@@ -8,6 +8,7 @@ export interface RoleCandidate {
   readonly kind: ColumnKind
   /** Null for a column that the reader added. */
   readonly place: number | null
+  readonly axes: readonly ArrayAxis[] | null
   readonly told: ColumnRole | null
   readonly facts: OrderFacts
   readonly summary: ColumnSummary
@@ -61,7 +62,8 @@ export function proposeRoles(columns: readonly RoleCandidate[]): ProposedRole[] 
   })
 }
 
-function byValues({ name, kind, facts, summary }: RoleCandidate, hasTime: boolean): ProposedRole {
+function byValues({ name, kind, axes, facts, summary }: RoleCandidate, hasTime: boolean): ProposedRole {
+  if (axes?.length === 0) return said("parameter", "A single value.")
   if (kind === "text" || kind === "datetime") return undecided
   if (facts.steady) return said("parameter", "Has at most two values in each trajectory.")
   if (kind === "boolean") return undecided

@@ -46,7 +46,7 @@ export function chooseDelimiter(
   best ??= singleColumn(lines, prefixes, told, limits)
   if (best.fields > limits.maxColumns) {
     const line = best.table.rows[0]?.line ?? 1
-    throw new IntakeRefusal("too-many-columns", { line, max: limits.maxColumns }, line)
+    throw new IntakeRefusal("too-many-columns", { place: ` in line ${line}`, max: limits.maxColumns }, line)
   }
   const unsure = told.delimiter == null && best.fields > 1
   const rival = unsure ? findRival(best, choices) : null

@@ -65,7 +65,7 @@ export class FieldColumn {
       this.numbers.values[row] = cell.value
       if (this.imaginary) this.imaginary.values[row] = 0
       if (cell.note) this.notes.set(cell.note, (this.notes.get(cell.note) ?? 0) + 1)
-      if (cell.code) report(cell.code, text, { value: cell.value })
+      if (cell.code) report(cell.code, text, { value: cell.value, more: "" })
       return
     }
     if (cell.kind === "complex" && this.imaginary) {

@@ -155,7 +155,7 @@ function finish(attempt: Attempt, survey: TextSurvey, context: ReadContext): Tab
         .join(", "),
     })
   reportText(attempt, survey)
-  const columns = finishColumns(outputs, watch, journal)
+  const columns = finishColumns(outputs, (index) => watch.factsOf(index), journal)
   return {
     format: "text",
     recipe: textRecipe(attempt, survey, columns, context.recipe),

@@ -226,7 +226,7 @@ export class RowReader {
     if (count > this.limits.maxColumns)
       throw new IntakeRefusal(
         "too-many-columns",
-        { line: buffer.line, max: this.limits.maxColumns },
+        { place: ` in line ${buffer.line}`, max: this.limits.maxColumns },
         buffer.line,
       )
     if (this.#repeatsHeader()) return

@@ -1,4 +1,5 @@
 import { IntakeRefusal } from "../intake-codes"
+import type { ColumnChunk } from "../column-chunk"
 import type { NumberBuffer } from "../columns/number-buffer"
 import type { NumberSummary } from "../columns/number-summary"
 import type { OutputColumn } from "../columns/output-column"
@@ -7,6 +8,12 @@ import type { ColumnKind } from "../table-reading"
 import type { FieldColumn } from "./field-column"
 import type { RowReader } from "./row-reader"
 
+/** A column whose parts are taken when they are full. */
+export interface TextOutput extends OutputColumn {
+  /** Adds the present part to the summary and returns it. */
+  take(rows: number): ColumnChunk
+}
+
 type Told = Partial<RecipeColumn> | undefined
 
 /**
@@ -14,9 +21,9 @@ type Told = Partial<RecipeColumn> | undefined
  *
  * @throws IntakeRefusal recipe-mismatch when the recipe names another number of columns
  */
-export function textOutputs(reader: RowReader, recipe: RecipeInput): OutputColumn[] {
+export function textOutputs(reader: RowReader, recipe: RecipeInput): TextOutput[] {
   const { plan, fields, segments } = reader
-  const made: ((told: Told) => OutputColumn)[] = []
+  const made: ((told: Told) => TextOutput)[] = []
   if (plan.segments) {
     const { column } = plan.segments
     made.push((told) => numberOutput(column, null, null, "number", segments.numbers, segments.summary, told))
@@ -52,11 +59,12 @@ function numberOutput(
   buffer: NumberBuffer,
   summary: NumberSummary,
   told: Told,
-): OutputColumn {
+): TextOutput {
   return {
     name: told?.name ?? name,
     unit: told?.unit ?? unit,
     kind,
+    symbol: null,
     axes: null,
     longName: null,
     place,
@@ -75,12 +83,13 @@ function numberOutput(
   }
 }
 
-function textOutput(field: FieldColumn, place: number, told: Told): OutputColumn {
+function textOutput(field: FieldColumn, place: number, told: Told): TextOutput {
   const texts = field.texts!
   return {
     name: told?.name ?? field.plan.name,
     unit: told?.unit ?? field.plan.unit,
     kind: field.plan.kind === "datetime" ? "datetime" : "text",
+    symbol: null,
     axes: null,
     longName: null,
     place,

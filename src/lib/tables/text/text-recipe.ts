@@ -1,5 +1,6 @@
 import type { ColumnReading } from "../table-reading"
-import type { ReadingRecipe, RecipeColumn, RecipeInput } from "../reading-recipe"
+import { recipeColumn } from "../columns/recipe-column"
+import type { ReadingRecipe, RecipeInput } from "../reading-recipe"
 import type { Attempt } from "./read-text"
 import type { TextSurvey } from "./survey-text"
 
@@ -27,23 +28,9 @@ export function textRecipe(
     padShortRows: plan.padShortRows,
     segments: plan.segments,
     block: plan.block,
+    tables: null,
     columns: open.has("delimiter-unsure")
       ? null
       : columns.map((column, index) => recipeColumn(column, outputs[index]!.told)),
-  }
-}
-
-export function recipeColumn(column: ColumnReading, told: Partial<RecipeColumn> | undefined): RecipeColumn {
-  const { name, unit, symbol, role, kind, axes } = column
-  const names = axes?.every((axis) => axis.name !== null) ? axes.map((axis) => axis.name!) : null
-  return {
-    name,
-    unit,
-    symbol,
-    role,
-    kind,
-    thousands: told?.thousands ?? null,
-    sentinels: told?.sentinels ?? null,
-    axes: names,
   }
 }
