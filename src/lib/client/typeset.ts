@@ -33,8 +33,12 @@ async function fetchWaiting(): Promise<void> {
   listeners.forEach((listener) => listener())
 }
 
+/** Formulas kept at most; a server meets those of many manuscripts. */
+const mostBoxes = 5000
+
 /** Puts formulas that the server has already set into the cache, so that the first paint has them. */
 export function rememberBoxes(known: Readonly<Record<string, MathBox | null>>): void {
+  if (boxes.size > mostBoxes) boxes.clear()
   for (const [tex, box] of Object.entries(known)) boxes.set(tex, box)
 }
 
