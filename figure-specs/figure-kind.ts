@@ -90,12 +90,25 @@ export type SentencePart =
       /** What it accepts, for screen readers and the margin: "fit window, two times in 1/J". */
       readonly accepts: string
       readonly control: SlotControl
+      /** Where an emptied control writes, and whether it puts null there or takes the entry out; absent: it stays put. */
+      readonly whenEmpty?: { readonly pointer: string; readonly put: "null" | "nothing" }
     }
 
 export interface Sentence {
   readonly parts: readonly SentencePart[]
   /** The same sentence without controls, with its numbers when there is a result: the statistics part of the caption. */
   readonly plain: string
+}
+
+/**
+ * `compute` in two steps: compute(input, params) is fit(prepare(input, params), params), and only `fit`, which takes a few
+ * milliseconds, depends on the window that is dragged.
+ */
+export interface LiveComputation<Params, Result> {
+  /** What of the parameters `prepare` depends on: while it is equal, what was prepared can be kept. */
+  preparedFrom(params: Params): unknown
+  prepare(input: PanelInput, params: Params, onProgress?: (done: number, total: number) => void): unknown
+  fit(prepared: unknown, params: Params): Result
 }
 
 /**
@@ -113,4 +126,6 @@ export interface FigureKind<Params extends { kind: string }, Result extends Pane
   compute(input: PanelInput, params: Params, onProgress?: (done: number, total: number) => void): Result
   build(result: Result, params: Params, frame: Frame): PanelDrawing
   sentence(params: Params, result?: Result): Sentence
+  /** Present where a fit follows what is dragged. */
+  readonly live?: LiveComputation<Params, Result>
 }

@@ -1,16 +1,17 @@
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
+import type { PreparedCurve, PreparedCurves } from "../ensemble/prepare-curves"
 import type { DrawnSeries, PanelInput, TableColumn } from "../figure-kind"
 import { nameQuantities } from "../name-quantities"
 import { fitDecayCurve, type FittedCurve } from "./fit-curve"
 import type { DecayExponentParams } from "./params"
-import { prepareDecay, type PreparedCurve, type PreparedDecay } from "./prepare"
+import { prepareDecay } from "./prepare"
 import type { DecayCurve, DecayResult } from "./result"
 
 const described = ({ name, unit, symbol }: TableColumn) => ({ name, unit, symbol })
 const orNull = (value: number) => (Number.isFinite(value) ? value : null)
 
 /** Fits a prepared panel in its window and gathers everything that is drawn and quoted. */
-export function fitDecay(prepared: PreparedDecay, params: DecayExponentParams): DecayResult {
+export function fitDecay(prepared: PreparedCurves, params: DecayExponentParams): DecayResult {
   const fitted = prepared.curves.map((curve) => ({ curve, fit: fitDecayCurve(curve, params) }))
   const curves = fitted.map(({ curve, fit }): DecayCurve => ({
     curve: curve.curve,

@@ -5,7 +5,7 @@ import { decadesOf } from "@/lib/stats/power-law/power-law-warnings"
 import type { Evidence, Fit } from "./evidence"
 import { methodSentence } from "./method-sentence"
 import type { DecayExponentParams } from "./params"
-import type { PreparedCurve } from "./prepare"
+import type { PreparedCurve } from "../ensemble/prepare-curves"
 
 /** Exponent and amplitude of one fitted curve, each with how it was made. */
 export function curveQuantities(

@@ -18,7 +18,7 @@ import { bootstrapInterval } from "@/lib/stats/resampling/bootstrap-interval"
 import type { StatisticalWarning } from "@/lib/stats/warnings/statistical-warning"
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
 import type { DecayExponentParams } from "./params"
-import type { PreparedCurve } from "./prepare"
+import type { PreparedCurve } from "../ensemble/prepare-curves"
 
 export type Fit = NonNullable<DecayExponentParams["fit"]>
 

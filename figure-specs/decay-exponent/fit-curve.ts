@@ -2,11 +2,10 @@ import type { Quantity } from "@/lib/domain/quantity"
 import { lineError } from "@/lib/stats/power-law/fit-power-law"
 import type { StatisticalWarning } from "@/lib/stats/warnings/statistical-warning"
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
-import { describeCurve } from "../curve-words"
 import { curveQuantities } from "./curve-quantities"
 import { evidenceOf, type Evidence } from "./evidence"
 import type { DecayExponentParams } from "./params"
-import type { PreparedCurve } from "./prepare"
+import type { PreparedCurve } from "../ensemble/prepare-curves"
 import type { DecayFitResult } from "./result"
 
 export interface FittedCurve {
@@ -19,7 +18,7 @@ export interface FittedCurve {
 export function fitDecayCurve(prepared: PreparedCurve, params: DecayExponentParams): FittedCurve {
   const { fit } = params
   if (!fit) return { fit: null, quantities: [], warnings: [] }
-  const where = describeCurve(params.data.curveBy, prepared.curve)
+  const { where } = prepared
   const evidence = evidenceOf(prepared, fit, where)
   if ("refusal" in evidence) return { fit: null, quantities: [], warnings: [evidence.refusal] }
   const drawn = drawLine(prepared, evidence, fit.band.kind !== "none")

@@ -1,7 +1,9 @@
+import type { PreparedCurves } from "../ensemble/prepare-curves"
 import type { FigureKind } from "../figure-kind"
 import { build } from "./build"
-import { computeDecay } from "./compute"
+import { computeDecay, fitDecay } from "./compute"
 import { decayExponentParams, type DecayExponentParams } from "./params"
+import { preparedFrom, prepareDecay } from "./prepare"
 import { proposeDecay } from "./propose"
 import type { DecayResult } from "./result"
 import { decaySentence } from "./sentence"
@@ -16,4 +18,9 @@ export const decayExponent = {
   compute: computeDecay,
   build,
   sentence: decaySentence,
+  live: {
+    preparedFrom,
+    prepare: prepareDecay,
+    fit: (prepared, params) => fitDecay(prepared as PreparedCurves, params),
+  },
 } as const satisfies FigureKind<DecayExponentParams, DecayResult>

@@ -1,9 +1,7 @@
 import type { Interval, Provenance } from "@/lib/domain/quantity"
+import { numberText, percentText } from "../sentence/parts"
 import type { DecayExponentParams } from "./params"
-import type { PreparedCurve } from "./prepare"
-
-const number = (value: number) => String(Number(value.toPrecision(4)))
-const percent = (level: number) => `${Number((level * 100).toPrecision(4))} %`
+import type { PreparedCurve } from "../ensemble/prepare-curves"
 
 const weightWords: Record<string, string> = {
   smoothed: "weights from smoothed relative errors",
@@ -37,10 +35,10 @@ export function methodSentence(
         ? "values with given standard errors"
         : "a single trajectory"
   const window = facts.window
-    ? `${number(facts.window[0])} ≤ ${time} ≤ ${number(facts.window[1])} (${facts.points} points, ${facts.decades!.toFixed(2)} decades)`
+    ? `${numberText(facts.window[0])} ≤ ${time} ≤ ${numberText(facts.window[1])} (${facts.points} points, ${facts.decades!.toFixed(2)} decades)`
     : "all points"
   const uncertainty = interval
-    ? `the ${percent(interval.level)} interval is from the ${intervalWords[interval.type]}${
+    ? `the ${percentText(interval.level)} interval is from the ${intervalWords[interval.type]}${
         facts.resamples ? ` (${facts.resamples} resamples, seed ${facts.seed})` : ""
       }`
     : "no uncertainty can be given"

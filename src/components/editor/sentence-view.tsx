@@ -74,7 +74,12 @@ export function SentenceView({
             label={open.accepts}
             value={valueOf(open.pointer)}
             surroundings={surroundings}
-            onChange={(value) => onChange(open.pointer, value)}
+            onChange={(value) => {
+              const { whenEmpty } = open
+              if (value == null && whenEmpty)
+                onChange(whenEmpty.pointer, whenEmpty.put === "null" ? null : undefined)
+              else onChange(open.pointer, value)
+            }}
           />
         </SlotPlace>
       )}
