@@ -68,7 +68,7 @@ export default tseslint.config(
     },
   },
   {
-    files: ["src/**/*.tsx"],
+    files: ["src/components/**/*.{ts,tsx}", "src/lib/client/**/*.{ts,tsx}"],
     plugins: { "react-hooks": reactHooks, "jsx-a11y": jsxA11y },
     rules: { ...reactHooks.configs.recommended.rules, ...jsxA11y.flatConfigs.recommended.rules },
   },

@@ -1,5 +1,6 @@
 import { withValueAt } from "@/lib/domain/json-pointer"
-import { figureSpec, type FigureSpec } from "@specs/figure-spec"
+import type { FigureSpec } from "@specs/figure-spec"
+import { readSpec } from "@specs/read-spec"
 import type { SpecIssue } from "@specs/spec-error"
 
 /**
@@ -30,31 +31,6 @@ export const specText = (spec: FigureSpec): string => JSON.stringify(spec, null,
 /** Starts from a saved spec. */
 export function openSpec(spec: FigureSpec): SpecDocument {
   return { text: specText(spec), spec, issues: [], past: [], future: [], gesture: null }
-}
-
-/** Parses a spec from JSON text; every issue with its place, or the spec with its defaults filled in. */
-export function readSpec(text: string): { spec: FigureSpec } | { issues: readonly SpecIssue[] } {
-  let json: unknown
-  try {
-    json = JSON.parse(text)
-  } catch (error) {
-    return {
-      issues: [
-        { pointer: "", code: "not-json", message: `This is not JSON yet: ${(error as Error).message}` },
-      ],
-    }
-  }
-  const parsed = figureSpec.safeParse(json)
-  if (parsed.success) return { spec: parsed.data }
-  return {
-    issues: parsed.error.issues.map((issue) => ({
-      pointer: issue.path
-        .map((key) => `/${String(key).replaceAll("~", "~0").replaceAll("/", "~1")}`)
-        .join(""),
-      code: issue.code,
-      message: issue.message,
-    })),
-  }
 }
 
 function moveTo(document: SpecDocument, spec: FigureSpec, gesture: string | null): SpecDocument {

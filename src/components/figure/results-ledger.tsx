@@ -1,10 +1,14 @@
-import type { z } from "zod"
 import { Ledger } from "@/components/parts/ledger"
 import { intervalText, QuantityView } from "@/components/parts/quantity-view"
-import type { resultsDocument } from "@/lib/contracts/figures"
 import type { Quantity } from "@/lib/domain/quantity"
 
-type Results = z.output<typeof resultsDocument>
+interface Panel {
+  readonly curves: readonly {
+    readonly curve: number | string | null
+    readonly quantities: readonly object[]
+  }[]
+  readonly quantities: readonly object[]
+}
 
 interface Row {
   readonly key: string
@@ -13,19 +17,19 @@ interface Row {
 }
 
 /** Every quantity of a figure; named ones first. */
-function rowsOf(results: Results): readonly Row[] {
-  return results.panels.flatMap((panel, index) => {
-    const prefix = results.panels.length > 1 ? `(${String.fromCharCode(97 + index)}) ` : ""
-    const named = panel.quantities.map((quantity) => ({
+function rowsOf(panels: readonly Panel[]): readonly Row[] {
+  return panels.flatMap((panel, index) => {
+    const prefix = panels.length > 1 ? `(${String.fromCharCode(97 + index)}) ` : ""
+    const named = (panel.quantities as readonly Quantity[]).map((quantity) => ({
       key: `${index}-${quantity.name}`,
       where: `${prefix}${quantity.name}`,
-      quantity: quantity as Quantity,
+      quantity,
     }))
     const curves = panel.curves.flatMap((curve) =>
-      curve.quantities.map((quantity) => ({
+      (curve.quantities as readonly Quantity[]).map((quantity) => ({
         key: `${index}-${curve.curve}-${quantity.name}`,
         where: `${prefix}${quantity.name}${curve.curve === null ? "" : `, ${curve.curve}`}`,
-        quantity: quantity as Quantity,
+        quantity,
       })),
     )
     return [...named, ...curves]
@@ -33,11 +37,11 @@ function rowsOf(results: Results): readonly Row[] {
 }
 
 /** The numbers of a figure; each opens to how it was made. */
-export function ResultsLedger({ results }: { results: Results }) {
+export function ResultsLedger({ panels }: { panels: readonly Panel[] }) {
   return (
     <Ledger
       caption="Quantities of this figure"
-      rows={rowsOf(results)}
+      rows={rowsOf(panels)}
       rowKey={(row) => row.key}
       empty={
         <p className="text-soft">This figure yields no quantity: its fit was refused, or it has none.</p>

@@ -54,7 +54,7 @@ export function QuantityView({
         aria-expanded={isOpen}
         aria-controls={`${id}-made`}
         onClick={() => setOpen(!isOpen)}
-        className="decoration-rule min-h-6 font-serif tabular-nums underline decoration-dotted underline-offset-4 hover:decoration-solid"
+        className="min-h-6 font-serif tabular-nums underline decoration-rule decoration-dotted underline-offset-4 hover:decoration-solid"
       >
         {symbol && (
           <>
@@ -67,7 +67,7 @@ export function QuantityView({
       {isOpen && (
         <span
           id={`${id}-made`}
-          className="border-rule bg-raised text-small mt-1 mb-2 block max-w-prose border-l-2 py-2 pr-3 pl-3 font-sans"
+          className="mt-1 mb-2 block max-w-prose border-l-2 border-rule bg-raised py-2 pr-3 pl-3 font-sans text-small"
         >
           {provenance?.sentence && <span className="mb-2 block font-serif">{provenance.sentence}</span>}
           {facts

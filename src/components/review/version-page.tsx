@@ -153,7 +153,7 @@ function Version({
           </p>
         )}
         <p className="measure font-serif text-soft">{version.sentence}</p>
-        {version.results && <ResultsLedger results={version.results} />}
+        {version.results && <ResultsLedger panels={version.results.panels} />}
         <p className="mt-6 text-small text-soft">
           Data:{" "}
           {version.inputs.map((input, index) => (

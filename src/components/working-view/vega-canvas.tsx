@@ -3,12 +3,12 @@ import { VegaEmbed } from "react-vega"
 import type { Spec, View } from "vega"
 import type { EmbedOptions, Result } from "vega-embed"
 import { expressionInterpreter } from "vega-interpreter"
-import { frameShape } from "@specs/chart/axis-shapes"
 import type { Frame, Look, PanelDrawing } from "@specs/chart/drawing"
 import { fitFrame, type FittedPanel } from "@specs/chart/fit-frame"
 import type { Ink } from "@specs/chart/free-place"
 import { insideShapes } from "@specs/chart/inside-shapes"
 import { sceneInk, type SceneMark } from "@specs/chart/scene-ink"
+import { frameShapes } from "@specs/chart/surroundings"
 import { useFigureFont } from "./figure-fonts"
 import { labelSetter, type MathBox } from "./set-runs"
 import { ShapeView } from "./shape-view"
@@ -120,11 +120,11 @@ function SetChart({
   const { template, embedded, ink } = useLivingView(panel, onReady)
   const shapes = useMemo(
     () => [
-      frameShape(drawing.axes, frame, look),
+      ...frameShapes(drawing, frame),
       ...texts,
       ...insideShapes(drawing, frame, ink, set, { legend: true, taken: [] }),
     ],
-    [drawing, frame, look, texts, ink, set],
+    [drawing, frame, texts, ink, set],
   )
   useEffect(() => {
     const tex = missing()

@@ -1,7 +1,15 @@
 import { Problem } from "@/lib/contracts/problems"
 import type { DatasetVersionState } from "@/lib/domain/states"
 import type { Db } from "@/lib/server/db/client"
+import { insertEvent } from "@/lib/server/db/events"
 import type { ColumnRole } from "@specs/schema/data-binding"
+
+/** Where a version is found. */
+export interface DatasetVersionPlace {
+  readonly manuscriptId: string
+  readonly datasetName: string
+  readonly number: number
+}
 
 /** Versions with what a list of them shows. */
 export function versionsInList(db: Db) {
@@ -67,6 +75,52 @@ export async function getDataset(db: Db, manuscriptId: string, name: string) {
   const found = (await listDatasets(db, manuscriptId)).find((dataset) => dataset.name === name)
   if (!found) throw new Problem("not-found", `There is no dataset “${name}” in this manuscript.`)
   return found
+}
+
+/** Names a dataset before its first file. @throws Problem `name-taken` */
+export async function createDataset(
+  db: Db,
+  manuscriptId: string,
+  personId: string,
+  dataset: { name: string; description: string },
+) {
+  await db.transaction().execute(async (trx) => {
+    const { id } = await trx
+      .insertInto("dataset")
+      .values({ ...dataset, manuscriptId, createdBy: personId })
+      .returning("id")
+      .executeTakeFirstOrThrow()
+    await insertEvent(trx, {
+      manuscriptId,
+      personId,
+      kind: "dataset.created",
+      subject: id,
+      data: { dataset: dataset.name },
+    })
+  })
+  return getDataset(db, manuscriptId, dataset.name)
+}
+
+/** Changes what is said about a dataset. @throws Problem `not-found` */
+export async function changeDataset(
+  db: Db,
+  manuscriptId: string,
+  personId: string,
+  name: string,
+  description: string,
+) {
+  const { id } = await getDataset(db, manuscriptId, name)
+  await db.transaction().execute(async (trx) => {
+    await trx.updateTable("dataset").set({ description }).where("id", "=", id).execute()
+    await insertEvent(trx, {
+      manuscriptId,
+      personId,
+      kind: "dataset.changed",
+      subject: id,
+      data: { dataset: name },
+    })
+  })
+  return getDataset(db, manuscriptId, name)
 }
 
 /** The row of one version. @throws Problem `not-found` */

@@ -10,6 +10,7 @@ import { addJob } from "@/lib/server/db/jobs"
 import { datasetsOf } from "@specs/compute-figure"
 import { figureSpec, type FigureSpec } from "@specs/figure-spec"
 import { kindOf } from "@specs/kinds"
+import { issuesOf } from "@specs/read-spec"
 import { SpecError } from "@specs/spec-error"
 import { getFigure, presentVersion, versionsInList } from "./figures"
 
@@ -17,15 +18,7 @@ import { getFigure, presentVersion, versionsInList } from "./figures"
 export function parseSpec(json: unknown): FigureSpec {
   const parsed = figureSpec.safeParse(json)
   if (parsed.success) return parsed.data
-  throw new SpecError(
-    parsed.error.issues.map((issue) => ({
-      pointer: issue.path
-        .map((key) => `/${String(key).replaceAll("~", "~0").replaceAll("/", "~1")}`)
-        .join(""),
-      code: issue.code,
-      message: issue.message,
-    })),
-  )
+  throw new SpecError(issuesOf(parsed.error))
 }
 
 async function pinInputs(
