@@ -37,7 +37,7 @@ export interface Look {
   readonly dashes: readonly (readonly number[])[]
   readonly letter: { readonly style: "(a)" | "a" | "A"; readonly bold: boolean }
   /** Colour map of heat maps. */
-  readonly colorMap: "viridis" | "cividis" | "vik"
+  readonly colorMap: "viridis" | "cividis" | "RdBu"
 }
 
 /** The data rectangle that a panel draws into, in points. */

@@ -33,7 +33,7 @@ export const lookPatch = z
       .partial()
       .strict()
       .nullable(),
-    colorMap: z.enum(["viridis", "cividis", "vik"]).nullable(),
+    colorMap: z.enum(["viridis", "cividis", "RdBu"]).nullable(),
   })
   .partial()
   .strict()

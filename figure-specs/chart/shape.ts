@@ -47,7 +47,7 @@ export interface Box {
 }
 
 /** Half the height of figures and capitals: a label centred on a tick has its digits centred. */
-const middleEm = 0.355
+const middleEm = 0.345
 
 /** Where the baseline of a text starts, before its rotation, relative to the point that it hangs on. */
 export function baselineOffset(

@@ -1,6 +1,7 @@
-import { axisTexts } from "./axis-shapes"
+import { axisTexts, frameShape } from "./axis-shapes"
+import { colorBarShapes, colorBarTexts } from "./color-bar-shapes"
 import type { Frame, PanelDrawing } from "./drawing"
-import { textBounds, type MeasureLabel, type TextShape } from "./shape"
+import { textBounds, type MeasureLabel, type Shape, type TextShape } from "./shape"
 
 /** Room that a panel needs outside its frame, in points. */
 export interface Margins {
@@ -21,7 +22,14 @@ export function surroundingTexts(
     ...axisTexts(x, "bottom", frame, frame.look, measure),
     ...axisTexts(y, "left", frame, frame.look, measure),
     ...(top ? axisTexts(top, "top", frame, frame.look, measure) : []),
+    ...(drawing.colorBar ? colorBarTexts(drawing.colorBar, frame, measure) : []),
   ]
+}
+
+/** The frame with its ticks, and the colour bar beside it. */
+export function frameShapes(drawing: PanelDrawing, frame: Frame): readonly Shape[] {
+  const bar = drawing.colorBar ? colorBarShapes(drawing.colorBar, frame) : []
+  return [frameShape(drawing.axes, frame, frame.look), ...bar]
 }
 
 /** How far those texts, and half the frame's line, stick out of the frame. */

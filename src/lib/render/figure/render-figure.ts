@@ -1,11 +1,12 @@
-import { frameShape } from "@specs/chart/axis-shapes"
-import type { Look } from "@specs/chart/drawing"
+import { frameShapes } from "@specs/chart/surroundings"
+import type { Legend, Look } from "@specs/chart/drawing"
 import { insideShapes } from "@specs/chart/inside-shapes"
 import { defaultLook } from "@specs/chart/look"
 import { patchLook, readLookPatch, type LookPatch } from "@specs/chart/look-patch"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
-import { kindOf } from "@specs/kinds"
+import { kindOf as kindByName, type AnyKind } from "@specs/kinds"
+import type { PanelParams } from "@specs/registry"
 import { SpecError } from "@specs/spec-error"
 import { drawMarks, type DrawnMarks } from "../panel/draw-marks"
 import { fontRules } from "../svg/embed-fonts"
@@ -25,6 +26,15 @@ export interface RenderedFigure {
   readonly alternativeText: string
   /** What the caption must say about the drawing, one sentence each. */
   readonly notes: readonly string[]
+  /** The legend of each panel, for checks of what tells its series apart. */
+  readonly legends: readonly Legend[]
+}
+
+export interface RenderOptions {
+  /** Changes to the default look, such as a manuscript's house look. */
+  readonly look?: LookPatch
+  /** Where kinds come from; the registered ones unless a kind is being tried out. */
+  readonly kindOf?: (kind: PanelParams["kind"]) => Pick<AnyKind, "build">
 }
 
 /** The look of each panel: the figure's, changed by the panel's own style. The face is the figure's: one paper, one face. */
@@ -46,14 +56,13 @@ function repeated(legends: readonly { readonly entries: readonly unknown[] }[], 
  *
  * @param spec a figure spec with defaults filled in
  * @param results one result a panel, in the order of the spec
- * @param options.look changes to the default look, such as a manuscript's house look
  * @throws SpecError with every label, place or style setting that cannot be used
  * @see docs/rendering.md
  */
 export async function renderFigure(
   spec: FigureSpec,
   results: readonly PanelResult[],
-  { look: changes = {} }: { look?: LookPatch } = {},
+  { look: changes = {}, kindOf = kindByName }: RenderOptions = {},
 ): Promise<RenderedFigure> {
   const look = patchLook(defaultLook, changes)
   const typesetter = await typesetterFor(look.fontFamily)
@@ -83,7 +92,7 @@ export async function renderFigure(
         legend: !repeated(legends, index),
         taken: letter.box ? [letter.box] : [],
       })
-      const shapes = [frameShape(drawing.axes, frame, frame.look), ...texts, ...letter.shapes, ...inside]
+      const shapes = [...frameShapes(drawing, frame), ...texts, ...letter.shapes, ...inside]
       return movedSvg(rect.x, rect.y, svg + shapesSvg(shapes, typesetter))
     })
     .join("")
@@ -103,5 +112,5 @@ export async function renderFigure(
   const notes = panels.flatMap(({ drawing }, index) =>
     drawing.notes.map((note) => (letters[index] ? `${letters[index]} ${note}` : note)),
   )
-  return { svg, widthMm, heightMm, alternativeText, notes }
+  return { svg, widthMm, heightMm, alternativeText, notes, legends }
 }

@@ -21,7 +21,8 @@ function textRun(
   const style = label.italic ? ' font-style="italic"' : ""
   const place = `x="${written(x)}" y="${written(y - run.rise * fontPt)}"`
   const face = `font-family="${standIns[run.family] ?? run.family}" font-size="${size}"${weight}${style}`
-  return `<text ${place} ${face} xml:space="preserve">${escapeXml(run.text)}</text>`
+  const script = run.scale < 1 ? ' class="script"' : ""
+  return `<text ${place} ${face}${script} xml:space="preserve">${escapeXml(run.text)}</text>`
 }
 
 /** A set label as SVG: text in the figure's face, mathematics as paths. */
@@ -34,7 +35,7 @@ export function labelSvg(shape: TextShape, label: SetLabel): string {
     if (run.type === "text") return textRun(run, x, dy, fontPt, label)
     const scale = Math.round((fontPt / 1000) * 1e6) / 1e6
     const body = run.box.body.replaceAll("currentColor", color)
-    return `<g transform="translate(${written(x)},${written(dy)}) scale(${scale})">${body}</g>`
+    return `<g class="math" transform="translate(${written(x)},${written(dy)}) scale(${scale})">${body}</g>`
   })
   const place = `translate(${written(shape.x)},${written(shape.y)})${turn}`
   return `<g transform="${place}" fill="${color}">${runs.join("")}</g>`
