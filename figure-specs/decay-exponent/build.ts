@@ -6,11 +6,11 @@ import { referenceGuides } from "../chart/reference-guides"
 import { seriesStyle } from "../chart/series-style"
 import { labelAlong } from "../chart/slope-guide"
 import { thinPoints } from "../chart/thin-points"
+import { curveTitles } from "../curve-panel/curve-titles"
 import { alternativeText } from "./alternative-text"
 import { drawCurve, fitColor, shownPoints, type DrawnCurve } from "./draw-curve"
 import type { DecayExponentParams } from "./params"
 import type { DecayResult } from "./result"
-import { decayTitles } from "./titles"
 
 /** Points closer than this, in marker sizes, crowd. */
 const crowded = 1.25
@@ -58,7 +58,7 @@ function fitLabel(
     const t = window[0] * (window[1] / window[0]) ** share
     return { x: at.x(t), y: at.y(amplitude * t ** power) }
   }
-  const text = `$\\propto ${decayTitles(result).timeTex}^{${exponent.tex}}$`
+  const text = `$\\propto ${curveTitles(result).abscissaTex}^{${exponent.tex}}$`
   const falling = power < 0
   const places = (["below", "above"] as const).flatMap((side) =>
     labelAlong(text, fitColor, { from: point(0.1), to: point(0.9), side }, 5).places.map((place) => ({
@@ -72,7 +72,7 @@ function fitLabel(
 }
 
 function legendOf(result: DecayResult, { look }: Frame, drawn: readonly DrawnCurve[]): Legend {
-  const { curveTitle, curveLabel, titled } = decayTitles(result)
+  const { curveTitle, curveLabel, titled } = curveTitles(result)
   if (result.curves.length < 2) return { title: null, entries: [] }
   const entries = result.curves.map((curve, index) => {
     const { color, marker, dash } = seriesStyle(look, index)
@@ -92,7 +92,7 @@ function legendOf(result: DecayResult, { look }: Frame, drawn: readonly DrawnCur
  */
 export function build(result: DecayResult, params: DecayExponentParams, frame: Frame): PanelDrawing {
   const { widthPt, heightPt, look } = frame
-  const titles = decayTitles(result)
+  const titles = curveTitles(result)
   const wish = domains(result, params)
   const x = axisOf({
     ...wish.x,
@@ -117,7 +117,7 @@ export function build(result: DecayResult, params: DecayExponentParams, frame: F
   const guides = referenceGuides(
     params.references,
     {
-      symbol: titles.timeTex,
+      symbol: titles.abscissaTex,
       curves: drawn.flatMap(({ points }) => points),
       stretch: guideStretch(result, at, widthPt),
       axes: { x, y },

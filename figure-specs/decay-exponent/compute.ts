@@ -1,4 +1,5 @@
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
+import { describeColumns } from "../curve-panel/described-columns"
 import type { PreparedCurve, PreparedCurves } from "../ensemble/prepare-curves"
 import type { DrawnSeries, PanelInput, TableColumn } from "../figure-kind"
 import { nameQuantities } from "../name-quantities"
@@ -7,7 +8,6 @@ import type { DecayExponentParams } from "./params"
 import { prepareDecay } from "./prepare"
 import type { DecayCurve, DecayResult } from "./result"
 
-const described = ({ name, unit, symbol }: TableColumn) => ({ name, unit, symbol })
 const orNull = (value: number) => (Number.isFinite(value) ? value : null)
 
 /** Fits a prepared panel in its window and gathers everything that is drawn and quoted. */
@@ -22,7 +22,7 @@ export function fitDecay(prepared: PreparedCurves, params: DecayExponentParams):
     fit: fit.fit,
     quantities: fit.quantities,
   }))
-  const { columns, curveBy } = prepared.bound
+  const { columns } = prepared.bound
   const time = columns.get("time")!
   const observable = columns.get("observable")!
   const chosen =
@@ -33,9 +33,7 @@ export function fitDecay(prepared: PreparedCurves, params: DecayExponentParams):
     quantities: nameQuantities(params.quantities, curves, ["exponent", "amplitude"]),
     warnings: [...fitted.flatMap(({ curve, fit }) => [...curve.warnings, ...fit.warnings]), ...chosen],
     series: fitted.flatMap(({ curve, fit }) => seriesOf(curve, fit, time, observable)),
-    abscissa: described(time),
-    observable: { ...described(observable), normalised: params.reduction.normalise !== "none" },
-    curveBy: curveBy && described(curveBy),
+    ...describeColumns(prepared.bound, params.reduction.normalise !== "none"),
   }
 }
 

@@ -1,3 +1,4 @@
+import type { DescribedColumns } from "../curve-panel/described-columns"
 import type { CurveKey, CurveResult, PanelResult } from "../figure-kind"
 
 /** Columns as plain arrays, so that a result survives JSON. */
@@ -24,19 +25,7 @@ export interface DecayFitResult {
   readonly outside: readonly boolean[]
 }
 
-export interface DecayResult extends PanelResult {
+export interface DecayResult extends PanelResult, DescribedColumns {
   readonly kind: "decay-exponent"
   readonly curves: readonly DecayCurve[]
-  readonly abscissa: { readonly name: string; readonly unit: string | null; readonly symbol: string | null }
-  readonly observable: {
-    readonly name: string
-    readonly unit: string | null
-    readonly symbol: string | null
-    readonly normalised: boolean
-  }
-  readonly curveBy: {
-    readonly name: string
-    readonly unit: string | null
-    readonly symbol: string | null
-  } | null
 }

@@ -1,19 +1,21 @@
 import { axisTitle, symbolOf, unitLabel } from "../chart/axis-title"
 import type { CurveKey } from "../figure-kind"
-import type { DecayResult } from "./result"
+import type { DescribedColumns } from "./described-columns"
 
 /** Up to this many curves each says its parameter in full; beyond, the legend's title says it once. */
 const fullLabels = 3
 
-/** Words and symbols of a decay panel, from the names, symbols and units of its columns. */
-export function decayTitles(result: DecayResult) {
+/** Words and symbols of a panel of curves, from the names, symbols and units of its columns. */
+export function curveTitles(
+  result: DescribedColumns & { readonly curves: readonly { readonly curve: CurveKey }[] },
+) {
   const { abscissa, observable, curveBy } = result
-  const timeTex = symbolOf(abscissa) ?? "t"
+  const abscissaTex = symbolOf(abscissa) ?? "t"
   const plain = symbolOf(observable)
   // A symbol with its own argument, such as n(t), is left as its author wrote it.
   const at = (time: string) => (plain?.includes("(") ? plain : `${plain}(${time})`)
-  const mean = plain === null ? null : `\\langle ${at(timeTex)}\\rangle`
-  const normalised = plain === null ? null : `${at(timeTex)}/${plain.replace(/\(.*\)$/, "")}(0)`
+  const mean = plain === null ? null : `\\langle ${at(abscissaTex)}\\rangle`
+  const normalised = plain === null ? null : `${at(abscissaTex)}/${plain.replace(/\(.*\)$/, "")}(0)`
   const unitless = observable.normalised ? { ...observable, unit: null } : observable
   const curveTex = curveBy ? symbolOf(curveBy) : null
   const unit = curveBy?.unit ? `\u2009${unitLabel(curveBy.unit)}` : ""
@@ -27,7 +29,7 @@ export function decayTitles(result: DecayResult) {
   return {
     x: axisTitle(abscissa),
     y: axisTitle(unitless, observable.normalised ? normalised : mean),
-    timeTex,
+    abscissaTex,
     curveTitle: curveBy ? axisTitle(curveBy) : "",
     curveLabel,
     titled,
