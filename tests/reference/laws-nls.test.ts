@@ -6,6 +6,9 @@ import {
   naturalParameters,
   type Curve,
 } from "@/lib/stats/nonlinear/curve-problem"
+import { fitLawGivenErrors } from "@/lib/stats/laws/fit-law-given-errors"
+import type { LawId } from "@/lib/stats/laws/law"
+import { laws } from "@/lib/stats/laws/laws"
 import { levenbergMarquardt } from "@/lib/stats/nonlinear/levenberg-marquardt"
 import { normalCovariance } from "@/lib/stats/nonlinear/normal-covariance"
 
@@ -95,3 +98,77 @@ describe("all parameters at once, against R", () =>
       expect(Math.abs(fit.sumOfSquares / reference.rss - 1)).toBeLessThan(1e-8)
     }),
   ))
+
+describe("the laws themselves, amplitudes eliminated, against R", () => {
+  // Sign of R's coefficient in our parametrisation; the power law is written t^b here and t^-a there.
+  const rows: [string, LawId, readonly [string, number][], (y: number) => number][] = [
+    [
+      "kohlrausch",
+      "stretched-exponential",
+      [
+        ["A", 1],
+        ["tau", 1],
+        ["b", 1],
+      ],
+      () => 1,
+    ],
+    [
+      "powerOffset",
+      "power-law-offset",
+      [
+        ["A", 1],
+        ["a", -1],
+        ["c0", 1],
+      ],
+      () => 1,
+    ],
+    [
+      "divergence",
+      "finite-time-divergence",
+      [
+        ["A", 1],
+        ["ts", 1],
+        ["gm", 1],
+      ],
+      (y) => y,
+    ],
+  ]
+  for (const [name, id, names, sigmaOf] of rows)
+    test(name, () => {
+      const reference = r[name]
+      const y = Float64Array.from(reference.y as number[])
+      const points = { t: Float64Array.from(reference.t as number[]), y, sigma: y.map(sigmaOf) }
+      const result = fitLawGivenErrors(laws[id], points, [null, null], {
+        scale: "raw",
+        resamples: 0,
+        seed: 1,
+      })
+      if ("refused" in result) throw new Error(result.refused)
+      const { fit, standardErrors } = result
+      expect(fit.convergence).toMatchObject({ code: "converged", confirmed: true, atBound: false })
+      expect(Math.abs(fit.chiSquare / reference.rss - 1)).toBeLessThan(1e-8)
+      // nls estimates the scale of the errors from the residuals.
+      const scale = Math.sqrt(fit.chiSquare / fit.degreesOfFreedom)
+      names.forEach(([parameter, sign], j) => {
+        expect(Math.abs((sign * fit.parameters[j]!) / reference.coef[parameter] - 1)).toBeLessThan(1e-6)
+        expect(Math.abs((standardErrors[j]! * scale) / reference.se[parameter] - 1)).toBeLessThan(1e-5)
+      })
+    })
+
+  test("a divergence fitted in the logarithm stays within an error of the one fitted to the values", () => {
+    const reference = r.divergence
+    const y = Float64Array.from(reference.y as number[])
+    const points = { t: Float64Array.from(reference.t as number[]), y, sigma: y }
+    const result = fitLawGivenErrors(laws["finite-time-divergence"], points, [null, null], {
+      scale: "log",
+      resamples: 0,
+      seed: 1,
+    })
+    if ("refused" in result) throw new Error(result.refused)
+    ;["A", "ts", "gm"].forEach((parameter, j) =>
+      expect(Math.abs(result.fit.parameters[j]! - reference.coef[parameter])).toBeLessThan(
+        0.25 * reference.se[parameter],
+      ),
+    )
+  })
+})

@@ -101,13 +101,16 @@ export function separableProblem(
       return out.every(Number.isFinite)
     },
     jacobian(shapes, out) {
-      for (let s = 0; s < q; s += 1) {
-        for (let i = 0; i < n; i += 1) {
-          model.evaluate(t[i]!, shapes, at)
+      for (let i = 0; i < n; i += 1) {
+        model.evaluate(t[i]!, shapes, at)
+        for (let s = 0; s < q; s += 1) {
           let slope = at.fixedSlopes[s]!
           for (let c = 0; c < l; c += 1) slope += coefficients[c]! * at.termSlopes[c * q + s]!
-          column[i] = rootWeights[i]! * slope
+          out[i * q + s] = rootWeights[i]! * slope
         }
+      }
+      for (let s = 0; s < q; s += 1) {
+        for (let i = 0; i < n; i += 1) column[i] = out[i * q + s]!
         applyQTranspose(qr!, column)
         column.fill(0, 0, l)
         applyQ(qr!, column)
