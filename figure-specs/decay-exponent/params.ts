@@ -1,17 +1,6 @@
 import { z } from "zod"
-import { dataBinding } from "../schema/data-binding"
-import {
-  axes,
-  bandParams,
-  fitWindow,
-  intervalParams,
-  label,
-  namedQuantity,
-  place,
-  reductionParams,
-  referenceSlope,
-  stylePatch,
-} from "../schema/panel-parts"
+import { panelBase } from "../schema/panel-base"
+import { bandParams, fitWindow, intervalParams, reductionParams, referenceSlope } from "../schema/panel-parts"
 
 /** The power-law fit of one decay panel. */
 const decayFit = z
@@ -27,16 +16,10 @@ const decayFit = z
 export const decayExponentParams = z
   .object({
     kind: z.literal("decay-exponent"),
-    place: place.prefault({ row: 1, column: 1 }),
-    letter: z.string().max(3).optional(),
-    title: label.optional(),
-    data: dataBinding,
+    ...panelBase,
     reduction: reductionParams.prefault({}),
     fit: decayFit.nullable().prefault({}),
     references: z.array(referenceSlope).max(6).default([]),
-    axes: axes.prefault({}),
-    quantities: z.array(namedQuantity).max(40).default([]),
-    style: stylePatch,
   })
   .strict()
 
