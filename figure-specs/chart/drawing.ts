@@ -1,4 +1,5 @@
 import type { Spec } from "vega"
+import type { Annotation } from "../schema/annotations"
 
 /** Families that the figure fonts hold; docs/rendering.md says why these. */
 export type FontFamily = "Arimo" | "STIX Two Text"
@@ -121,6 +122,8 @@ export interface PanelDrawing {
   readonly legend: Legend
   readonly labels: readonly FrameLabel[]
   readonly colorBar: ColorBarDrawing | null
+  /** What the author put into the panel by hand; drawPanel takes it from the spec, kinds leave it out. */
+  readonly annotations?: readonly Annotation[]
   /** What the reader of the caption must be told about the drawing: "Error bars at 24 of 200 times." */
   readonly notes: readonly string[]
   /** One sentence for readers who cannot see the figure. */

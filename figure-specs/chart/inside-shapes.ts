@@ -1,6 +1,8 @@
 import type { Frame, FrameLabel, PanelDrawing } from "./drawing"
+import { annotationShapes } from "./annotation-shapes"
 import { freePlace, inkInside, type Ink } from "./free-place"
 import { legendShapes } from "./legend-shapes"
+import { pathInk } from "./scene-ink"
 import { boundsOf, textCorners, type Box, type MeasureLabel, type Shape, type TextShape } from "./shape"
 
 /** Points of ink along the edges and through the middle of a box, so that the next text keeps clear of it. */
@@ -9,6 +11,13 @@ function boxInk({ left, top, right, bottom }: Box): Ink {
   for (let x = left; x <= right + 2; x += 2)
     for (let y = top; y <= bottom + 2; y += 2) points.push([Math.min(x, right), Math.min(y, bottom)])
   return points
+}
+
+/** Where a shape that already has its place puts ink. */
+function shapeInk(shape: Shape, measure: MeasureLabel): Ink {
+  if (shape.type === "path") return pathInk(shape.d)
+  if (shape.type === "image") return []
+  return boxInk(boundsOf(textCorners(shape, measure(shape.text, shape.bold))))
 }
 
 /** A label at the first of its places that covers the least ink and stays inside the frame. */
@@ -34,8 +43,8 @@ function placeLabel(label: FrameLabel, ink: Ink, { widthPt, heightPt, look }: Fr
 }
 
 /**
- * Labels and legend of a panel, placed where they cover the least of what is drawn: labels first, because their places
- * are bound to the data, then the legend.
+ * Annotations, labels and legend of a panel. Annotations stand where their author put them; labels and then the legend,
+ * which is free to go anywhere, where they cover the least of what is drawn.
  *
  * @param options.legend false where a legend before this one says the same
  * @param options.taken boxes that hold something already, such as a panel letter
@@ -47,8 +56,8 @@ export function insideShapes(
   measure: MeasureLabel,
   { legend: withLegend, taken: boxes }: { readonly legend: boolean; readonly taken: readonly Box[] },
 ): readonly Shape[] {
-  const taken = [...ink, ...boxes.flatMap(boxInk)]
-  const shapes: Shape[] = []
+  const shapes: Shape[] = [...annotationShapes(drawing.annotations ?? [], drawing, frame).over]
+  const taken = [...ink, ...boxes.flatMap(boxInk), ...shapes.flatMap((shape) => shapeInk(shape, measure))]
   for (const label of drawing.labels) {
     const placed = placeLabel(label, taken, frame, measure)
     if (!placed) continue

@@ -2,12 +2,12 @@
 export class LabelError extends Error {
   constructor(
     readonly code:
-      | "TEX_INVALID"
-      | "TEX_FORBIDDEN"
-      | "TEX_TOO_LONG"
-      | "TEX_TOO_LARGE"
-      | "GLYPH_MISSING"
-      | "DOLLAR_UNCLOSED",
+      | "tex-invalid"
+      | "tex-forbidden"
+      | "tex-too-long"
+      | "tex-too-large"
+      | "glyph-missing"
+      | "dollar-unclosed",
     message: string,
     readonly column: number,
   ) {

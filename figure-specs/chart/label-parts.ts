@@ -35,7 +35,7 @@ function numberParts(tex: string, at: number): readonly LabelPart[] | null {
   ]
 }
 
-/** Splits a label at unescaped dollar signs. @throws LabelError DOLLAR_UNCLOSED */
+/** Splits a label at unescaped dollar signs. @throws LabelError dollar-unclosed */
 export function labelParts(label: string): readonly LabelPart[] {
   const parts: LabelPart[] = []
   let source = ""
@@ -62,7 +62,7 @@ export function labelParts(label: string): readonly LabelPart[] {
   }
   if (inMath) {
     const hint = "This $ opens a formula that is not closed. Write \\$ for a dollar sign."
-    throw new LabelError("DOLLAR_UNCLOSED", hint, start)
+    throw new LabelError("dollar-unclosed", hint, start)
   }
   finish()
   return parts

@@ -196,7 +196,7 @@ describe("labels", () => {
 
   test("an unclosed dollar is an error at its place", () => {
     expect(() => labelParts("ab $x")).toThrowError(
-      expect.objectContaining({ code: "DOLLAR_UNCLOSED", column: 4 }),
+      expect.objectContaining({ code: "dollar-unclosed", column: 4 }),
     )
   })
 })
@@ -215,6 +215,6 @@ describe("look settings", () => {
     [{ fontFamily: "Comic" }, "/style/fontFamily"],
     [{ fontPt: { signal: "1" } }, "/style/fontPt"],
   ])("%j is refused at its place", (patch, pointer) => {
-    expect(readLookPatch(patch, "/style").issues).toMatchObject([{ pointer, code: "STYLE_REFUSED" }])
+    expect(readLookPatch(patch, "/style").issues).toMatchObject([{ pointer, code: "style-refused" }])
   })
 })

@@ -58,7 +58,7 @@ export function readLookPatch(
     const unknown = issue.code === "unrecognized_keys" ? issue.keys.map((key) => `“${key}”`).join(", ") : null
     return {
       pointer: [pointer, ...issue.path].join("/"),
-      code: "STYLE_REFUSED",
+      code: "style-refused",
       message: unknown
         ? `${unknown} is not a look setting. Settings: ${Object.keys(lookPatch.shape).join(", ")}.`
         : issue.message,

@@ -34,13 +34,13 @@ function polyline(points: readonly (readonly [number, number])[]): (readonly [nu
   return points.flatMap((point, k) => (k === 0 ? [point] : between(points[k - 1]!, point)))
 }
 
-/** Ink along the M, L and V commands that this project's own paths are made of. */
-function pathInk(path: string): Ink {
+/** Ink along the M, L, H and V commands that this project's own paths are made of. */
+export function pathInk(path: string): Ink {
   const points: (readonly [number, number])[] = []
   let at: readonly [number, number] = [0, 0]
-  for (const [, letter, numbers] of path.matchAll(/([MLV])([^MLVZ]+)/g)) {
+  for (const [, letter, numbers] of path.matchAll(/([MLHV])([^MLHVZ]+)/g)) {
     const [first = 0, second = 0] = numbers!.split(",").map(Number)
-    const next = letter === "V" ? ([at[0], first] as const) : ([first, second] as const)
+    const next = ({ V: [at[0], first], H: [first, at[1]] } as const)[letter!] ?? ([first, second] as const)
     points.push(...(letter === "M" ? [next] : between(at, next)))
     at = next
   }

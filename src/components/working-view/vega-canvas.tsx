@@ -3,11 +3,13 @@ import { VegaEmbed } from "react-vega"
 import type { Spec, View } from "vega"
 import type { EmbedOptions, Result } from "vega-embed"
 import { expressionInterpreter } from "vega-interpreter"
+import { annotationShapes } from "@specs/chart/annotation-shapes"
 import type { Frame, Look, PanelDrawing } from "@specs/chart/drawing"
 import { fitFrame, type FittedPanel } from "@specs/chart/fit-frame"
 import type { Ink } from "@specs/chart/free-place"
 import { insideShapes } from "@specs/chart/inside-shapes"
 import { sceneInk, type SceneMark } from "@specs/chart/scene-ink"
+import type { Shape } from "@specs/chart/shape"
 import { frameShapes } from "@specs/chart/surroundings"
 import { useFigureFont } from "./figure-fonts"
 import { labelSetter, type MathBox } from "./set-runs"
@@ -118,6 +120,10 @@ function SetChart({
   )
   const { drawing, frame, margins, texts } = panel
   const { template, embedded, ink } = useLivingView(panel, onReady)
+  const { under } = useMemo(
+    () => annotationShapes(drawing.annotations ?? [], drawing, frame),
+    [drawing, frame],
+  )
   const shapes = useMemo(
     () => [
       ...frameShapes(drawing, frame),
@@ -131,18 +137,22 @@ function SetChart({
     if (tex.length > 0) want(tex)
   }, [shapes, missing, want])
   const [left, top] = [margins.left + edge, margins.top + edge]
+  const layer = (layerShapes: readonly Shape[]) => (
+    <svg className="pointer-events-none absolute inset-0" width={width} height={height} aria-hidden="true">
+      <g transform={`translate(${left},${top})`}>
+        {layerShapes.map((shape, index) => (
+          <ShapeView key={index} shape={shape} set={set} family={look.fontFamily} />
+        ))}
+      </g>
+    </svg>
+  )
   return (
     <div className="relative" style={{ width, height }} role="img" aria-label={drawing.alternativeText}>
+      {under.length > 0 && layer(under)}
       <div className="absolute" style={{ left, top }}>
         <VegaEmbed spec={template} options={options} onEmbed={embedded} />
       </div>
-      <svg className="pointer-events-none absolute inset-0" width={width} height={height} aria-hidden="true">
-        <g transform={`translate(${left},${top})`}>
-          {shapes.map((shape, index) => (
-            <ShapeView key={index} shape={shape} set={set} family={look.fontFamily} />
-          ))}
-        </g>
-      </svg>
+      {layer(shapes)}
     </div>
   )
 }

@@ -1,7 +1,7 @@
 import type { FigureSpec } from "@specs/figure-spec"
 import { SpecError, type SpecIssue } from "@specs/spec-error"
 
-/** Checks that every panel lies in the grid and no two share a cell. @throws SpecError PLACE_OUTSIDE, PLACE_TAKEN */
+/** Checks that every panel lies in the grid and no two share a cell. @throws SpecError place-outside, place-taken */
 export function checkPlaces({ panels, grid }: FigureSpec): void {
   const issues: SpecIssue[] = []
   const taken = new Map<string, number>()
@@ -11,7 +11,7 @@ export function checkPlaces({ panels, grid }: FigureSpec): void {
       const size = `${grid.rows} ${grid.rows === 1 ? "row" : "rows"} and ${grid.columns} ${grid.columns === 1 ? "column" : "columns"}`
       issues.push({
         pointer,
-        code: "PLACE_OUTSIDE",
+        code: "place-outside",
         message: `The grid has ${size}; this panel lies outside.`,
       })
       return
@@ -23,7 +23,7 @@ export function checkPlaces({ panels, grid }: FigureSpec): void {
         else if (!issues.some((issue) => issue.pointer === pointer))
           issues.push({
             pointer,
-            code: "PLACE_TAKEN",
+            code: "place-taken",
             message: `Row ${r}, column ${c} already holds panel ${other + 1}.`,
           })
       }

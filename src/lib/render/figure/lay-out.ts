@@ -2,6 +2,7 @@ import type { Frame, Look, PanelDrawing } from "@specs/chart/drawing"
 import { firstMargins, mostRounds, sameMargins } from "@specs/chart/fit-frame"
 import type { MeasureLabel, TextShape } from "@specs/chart/shape"
 import { marginsOf, surroundingTexts, type Margins } from "@specs/chart/surroundings"
+import { drawPanel } from "@specs/draw-panel"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
 import type { AnyKind } from "@specs/kinds"
@@ -39,7 +40,7 @@ function drawAll({ spec, results, kindOf }: Setting, frames: readonly Frame[]): 
     panels.map((panel, index) => {
       const result = results[index]
       if (!result) throw new Error(`Panel ${index + 1} has no result.`)
-      return kindOf(panel.kind).build(result, panel, frames[index]!)
+      return drawPanel(panel, result, frames[index]!, kindOf(panel.kind))
     })
   const alone = draw(spec.panels)
   if (!spec.grid.shareX && !spec.grid.shareY) return alone
@@ -73,14 +74,14 @@ function checkRoom(rects: readonly FrameRect[]): void {
   if (small < 0) return
   const side = rects[small]!.width < leastFramePt ? "wide" : "high"
   const message = `Panel ${small + 1} would be less than ${Math.round(leastFramePt / pointsPerMm)} mm ${side} beside its labels: make the figure larger or its labels shorter.`
-  throw new SpecError([{ pointer: "/size", code: "FIGURE_TOO_SMALL", message }])
+  throw new SpecError([{ pointer: "/size", code: "figure-too-small", message }])
 }
 
 /**
  * Finds frames and drawings that agree: margins follow from labels, labels from ticks, ticks from the frames. Two rounds
  * settle all but odd cases; margins that still change after that are taken as they are.
  *
- * @throws SpecError FIGURE_TOO_SMALL
+ * @throws SpecError figure-too-small
  */
 export function layOut(setting: Setting): readonly LaidPanel[] {
   const { spec, looks, measure } = setting

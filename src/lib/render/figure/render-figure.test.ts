@@ -124,11 +124,11 @@ describe("a figure", () => {
 
 describe("a figure that cannot be drawn says why and where", () => {
   test.each([
-    [{ axes: { x: { label: "a $\\frac{$" } } }, "/panels/0/axes/x/label", "TEX_INVALID"],
-    [{ references: [{ exponent: -1, label: "$t" }] }, "/panels/0/references/0/label", "DOLLAR_UNCLOSED"],
-    [{ title: "\\$ 漢" }, "/panels/0/title", "GLYPH_MISSING"],
-    [{ style: { tooltip: "x" } }, "/panels/0/style", "STYLE_REFUSED"],
-    [{ place: { row: 2, column: 1 } }, "/panels/0/place", "PLACE_OUTSIDE"],
+    [{ axes: { x: { label: "a $\\frac{$" } } }, "/panels/0/axes/x/label", "tex-invalid"],
+    [{ references: [{ exponent: -1, label: "$t" }] }, "/panels/0/references/0/label", "dollar-unclosed"],
+    [{ title: "\\$ 漢" }, "/panels/0/title", "glyph-missing"],
+    [{ style: { tooltip: "x" } }, "/panels/0/style", "style-refused"],
+    [{ place: { row: 2, column: 1 } }, "/panels/0/place", "place-outside"],
   ])("%j", async (changes, pointer, code) => {
     await expect(renderFigure(single(changes), [handMadeResult(1)])).rejects.toMatchObject({
       name: "SpecError",
@@ -139,14 +139,14 @@ describe("a figure that cannot be drawn says why and where", () => {
   test("too small for its labels", async () => {
     const spec = single({}, { widthMm: 20, heightMm: 15 })
     await expect(renderFigure(spec, [handMadeResult(1)])).rejects.toMatchObject({
-      issues: [{ pointer: "/size", code: "FIGURE_TOO_SMALL" }],
+      issues: [{ pointer: "/size", code: "figure-too-small" }],
     })
   })
 
   test("two panels in one place", async () => {
     const { spec } = exampleFigure({ panels: [decayPanel(), decayPanel()] })
     await expect(renderFigure(spec, [handMadeResult(1), handMadeResult(1)])).rejects.toMatchObject({
-      issues: [{ pointer: "/panels/1/place", code: "PLACE_TAKEN" }],
+      issues: [{ pointer: "/panels/1/place", code: "place-taken" }],
     })
   })
 })

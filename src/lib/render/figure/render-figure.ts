@@ -1,4 +1,5 @@
 import { frameShapes } from "@specs/chart/surroundings"
+import { annotationShapes } from "@specs/chart/annotation-shapes"
 import type { Legend, Look } from "@specs/chart/drawing"
 import { insideShapes } from "@specs/chart/inside-shapes"
 import { defaultLook } from "@specs/chart/look"
@@ -92,8 +93,9 @@ export async function renderFigure(
         legend: !repeated(legends, index),
         taken: letter.box ? [letter.box] : [],
       })
+      const { under } = annotationShapes(drawing.annotations ?? [], drawing, frame)
       const shapes = [...frameShapes(drawing, frame), ...texts, ...letter.shapes, ...inside]
-      return movedSvg(rect.x, rect.y, svg + shapesSvg(shapes, typesetter))
+      return movedSvg(rect.x, rect.y, shapesSvg(under, typesetter) + svg + shapesSvg(shapes, typesetter))
     })
     .join("")
   const described = panels.map(({ drawing }, index) =>

@@ -29,7 +29,7 @@ const geometry: Record<string, readonly string[]> = {
 function purify(element: SvgElement): readonly SvgElement[] {
   const allowed = geometry[element.name]
   if (!allowed)
-    throw new LabelError("GLYPH_MISSING", "A character of this formula is not in the mathematics font.", 1)
+    throw new LabelError("glyph-missing", "A character of this formula is not in the mathematics font.", 1)
   const attributes: Record<string, string> = {}
   for (const key of allowed) {
     const value = element.attributes[key]
@@ -50,10 +50,10 @@ function setWith(engine: TexEngine, tex: string): MathBox {
   try {
     raw = engine(tex)
   } catch (error) {
-    throw new LabelError("TEX_INVALID", `${(error as Error).message}.`.replace("..", "."), 1)
+    throw new LabelError("tex-invalid", `${(error as Error).message}.`.replace("..", "."), 1)
   }
   if (!raw.viewBox)
-    throw new LabelError("TEX_INVALID", "A label has one line: alignment is not available.", 1)
+    throw new LabelError("tex-invalid", "A label has one line: alignment is not available.", 1)
   const [, top, width, height] = raw.viewBox.split(/\s+/).map((value) => Number(value) / 1000) as [
     number,
     number,
@@ -61,9 +61,9 @@ function setWith(engine: TexEngine, tex: string): MathBox {
     number,
   ]
   if (width > widestEm || height > tallestEm)
-    throw new LabelError("TEX_TOO_LARGE", `A formula may be ${widestEm} em wide and ${tallestEm} em tall.`, 1)
+    throw new LabelError("tex-too-large", `A formula may be ${widestEm} em wide and ${tallestEm} em tall.`, 1)
   const body = writeSvg(parseSvg(raw.body).flatMap(purify))
-  if (body === "") throw new LabelError("TEX_INVALID", "There is nothing between the dollar signs.", 1)
+  if (body === "") throw new LabelError("tex-invalid", "There is nothing between the dollar signs.", 1)
   const em = (value: number) => Math.round(value * 1e4) / 1e4
   return { w: em(width), h: em(-top), d: em(height + top), body }
 }

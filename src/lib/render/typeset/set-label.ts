@@ -46,7 +46,7 @@ interface Segment {
   text: string
 }
 
-/** Splits text where the face lacks a character and another font stands in. @throws LabelError GLYPH_MISSING */
+/** Splits text where the face lacks a character and another font stands in. @throws LabelError glyph-missing */
 function segmentsOf(text: string, family: FontFamily, bold: boolean, italic: boolean, at: number): Segment[] {
   const own = openFont(findFace(family, bold, italic)!)
   const fallback = openFont(findFace(fallbackFamily, false, false)!)
@@ -57,7 +57,7 @@ function segmentsOf(text: string, family: FontFamily, bold: boolean, italic: boo
     const used = own.hasGlyphForCodePoint(code) ? family : fallbackFamily
     if (used === fallbackFamily && !fallback.hasGlyphForCodePoint(code)) {
       const name = `U+${code.toString(16).toUpperCase().padStart(4, "0")}`
-      throw new LabelError("GLYPH_MISSING", `The figure fonts have no “${character}” (${name}).`, place + 1)
+      throw new LabelError("glyph-missing", `The figure fonts have no “${character}” (${name}).`, place + 1)
     }
     const last = segments.at(-1)
     if (last?.family === used) last.text += character

@@ -24,18 +24,18 @@ function* commandsOf(tex: string): Generator<{ readonly name: string; readonly a
   for (const match of tex.matchAll(/\\([A-Za-z]+|[^A-Za-z])/g)) yield { name: match[1]!, at: match.index }
 }
 
-/** Refuses what must not reach the TeX engine. @throws LabelError TEX_FORBIDDEN, TEX_TOO_LONG */
+/** Refuses what must not reach the TeX engine. @throws LabelError tex-forbidden, tex-too-long */
 export function checkTex(tex: string): void {
   if (tex.length > longestTex)
     throw new LabelError(
-      "TEX_TOO_LONG",
+      "tex-too-long",
       `A formula may have at most ${longestTex} characters.`,
       longestTex + 1,
     )
   for (const { name, at } of commandsOf(tex)) {
     if (refused.has(name))
-      throw new LabelError("TEX_FORBIDDEN", `\\${name} is not available in a label.`, at + 1)
+      throw new LabelError("tex-forbidden", `\\${name} is not available in a label.`, at + 1)
     if (name === "\\")
-      throw new LabelError("TEX_FORBIDDEN", "A label has one line: \\\\ is not available.", at + 1)
+      throw new LabelError("tex-forbidden", "A label has one line: \\\\ is not available.", at + 1)
   }
 }
