@@ -1,7 +1,11 @@
-import { getDataset as contract } from "@/lib/contracts/datasets"
+import { changeDataset as changeContract, getDataset as getContract } from "@/lib/contracts/datasets"
 import { endpoint } from "@/lib/server/http/endpoint"
-import { getDataset } from "@/lib/server/services/datasets/datasets"
+import { changeDataset, getDataset } from "@/lib/server/services/datasets/datasets"
 
-export const GET = endpoint(contract, ({ db, params }) =>
+export const GET = endpoint(getContract, ({ db, params }) =>
   getDataset(db, params.manuscriptId, params.datasetName),
+)
+
+export const PATCH = endpoint(changeContract, ({ db, actor, params, body }) =>
+  changeDataset(db, params.manuscriptId, actor.person.id, params.datasetName, body.description),
 )

@@ -4,6 +4,7 @@ import { postDatasetVersion, pushDatasetVersion } from "@/lib/contracts/datasets
 import { Problem } from "@/lib/contracts/problems"
 import { endpoint, type Call } from "@/lib/server/http/endpoint"
 import { reply } from "@/lib/server/http/reply"
+import { announcedFileName, announcedSha256, plainFileName } from "@/lib/server/http/upload-headers"
 import { uploadDatasetVersion } from "@/lib/server/services/datasets/upload"
 
 type Upload = Call<
@@ -13,16 +14,18 @@ type Upload = Call<
   typeof pushDatasetVersion.access
 >
 
-async function receive({ db, actor, params, query, body, request }: Upload) {
+async function receive({ db, actor, params, query, body, request: { headers } }: Upload) {
   if (!body)
     throw new Problem("invalid-request", "The request has no body: send the file itself, as curl -T does.")
-  const length = request.headers.get("content-length")
+  const length = headers.get("content-length")
+  const asked = query.fileName === undefined ? undefined : plainFileName(query.fileName)
   const { version, isNew } = await uploadDatasetVersion(db, {
     ...params,
-    fileName: query.fileName ?? params.datasetName,
+    fileName: asked ?? announcedFileName(headers) ?? params.datasetName,
     personId: actor.person.id,
     pieces: Readable.fromWeb(body as NodeStream),
     announced: length === null ? null : Number(length),
+    sha256: announcedSha256(headers),
   })
   return reply(version, { status: isNew ? 201 : 200 })
 }

@@ -2,7 +2,7 @@ import { getArtwork as contract } from "@/lib/contracts/figures"
 import type { RenderingFormat } from "@/lib/domain/states"
 import { bytesResponse } from "@/lib/server/http/bytes-response"
 import { endpoint } from "@/lib/server/http/endpoint"
-import { getRendering } from "@/lib/server/services/figures/figure-versions"
+import { getRendering } from "@/lib/server/services/figures/version-files"
 import { getFigure } from "@/lib/server/services/figures/figures"
 
 const types: Record<RenderingFormat, string> = {
