@@ -7,7 +7,7 @@ import { uploadDatasetVersion } from "../src/lib/server/services/datasets/upload
 import { getDraft } from "../src/lib/server/services/drafts/drafts"
 import { pinFigures } from "../src/lib/server/services/drafts/pin-figures"
 import { createFigure } from "../src/lib/server/services/figures/figures"
-import { saveFigureVersion } from "../src/lib/server/services/figures/figure-versions"
+import { saveFigureVersion } from "../src/lib/server/services/figures/save-version"
 import { createManuscript } from "../src/lib/server/services/manuscripts/manuscripts"
 import { addComment, settleThread, startThread } from "../src/lib/server/services/review/threads"
 import { demoContent, type DemoContent } from "./demo/demo-content"
@@ -92,7 +92,7 @@ async function seedDemo(db: Db): Promise<void> {
   }
   for (const { name } of demoContent.datasets) {
     await waitUntilRead(db, manuscriptId, name)
-    await acceptDatasetVersion(db, { manuscriptId, datasetName: name, number: 1 }, people[1]!)
+    await acceptDatasetVersion(db, { manuscriptId, datasetName: name, number: 1 }, people[1]!, false)
   }
   const pins: { figureId: string; version: number }[] = []
   for (const figure of demoContent.figures) {

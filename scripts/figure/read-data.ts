@@ -3,30 +3,14 @@ import { Problem } from "@/lib/contracts/problems"
 import {
   collectColumns,
   fileSource,
-  type IntakeCodeName,
   parseRecipe,
   readTable,
   RecipeError,
   type RecipeInput,
   type TableReading,
 } from "@/lib/tables"
+import { costsData } from "@/lib/tables/costs-data"
 import type { DataTable } from "@specs/figure-kind"
-
-/** What costs a value or a row. Other problems of a table are told and do not stop a figure. */
-const losses: ReadonlySet<IntakeCodeName> = new Set<IntakeCodeName>([
-  "not-a-number",
-  "overflow-stars",
-  "thousands-separator",
-  "overflow",
-  "underflow",
-  "decimal-precision",
-  "ragged-short",
-  "ragged-long",
-  "quote-stray",
-  "comment-midfile",
-  "json-line",
-  "npy-truncated",
-])
 
 /** One table of a figure: where it lies and how it is read. */
 export interface DataFile {
@@ -70,8 +54,8 @@ export async function readData(
 
 function stoppedBy({ refused, asks, problems, problemCounts }: TableReading, acceptLosses: boolean) {
   if (refused) return [refused]
-  const lost = acceptLosses ? [] : problems.filter(({ code }) => losses.has(code))
-  const all = problemCounts.reduce((sum, { code, count }) => sum + (losses.has(code) ? count : 0), 0)
+  const lost = acceptLosses ? [] : problems.filter(({ code }) => costsData(code))
+  const all = problemCounts.reduce((sum, { code, count }) => sum + (costsData(code) ? count : 0), 0)
   const rest = all - lost.length
   const more = rest > 0 && !acceptLosses ? [{ code: "more", message: `And ${rest} more places.` }] : []
   return [...asks, ...lost, ...more]

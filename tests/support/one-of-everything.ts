@@ -138,6 +138,17 @@ async function insertAcceptedDataset(db: Db, manuscriptId: string, author: strin
   return { blobId, datasetId, datasetVersionId }
 }
 
+const spec = {
+  version: 1,
+  panels: [
+    {
+      kind: "decay-exponent",
+      data: { dataset: "annihilation", columns: { trajectory: "run", time: "t", observable: "n" } },
+    },
+  ],
+}
+const results = JSON.stringify({ panels: [] })
+
 /** A figure with one computed and drawn version. */
 export async function insertFigure(
   db: Db,
@@ -158,7 +169,7 @@ export async function insertFigure(
     .values({
       figureId,
       number: 1,
-      spec: JSON.stringify({ version: 1, panels: [] }),
+      spec: JSON.stringify(spec),
       specSha256: sha256("spec"),
       authorId: of.author,
     })
@@ -173,8 +184,8 @@ export async function insertFigure(
     .insertInto("result")
     .values({
       figureVersionId,
-      document: Buffer.from("{}"),
-      sha256: sha256("{}"),
+      document: Buffer.from(results),
+      sha256: sha256(results),
       series: Buffer.from("[]"),
       software: "{}",
     })

@@ -116,7 +116,12 @@ function Intake({ manuscriptId, version: initial, mayAccept }: Props) {
               kept as it is.
             </p>
             <div className="flex flex-wrap gap-3">
-              <Button look="act" onPress={() => void act(() => call(acceptDatasetVersion, { params }))}>
+              <Button
+                look="act"
+                onPress={() =>
+                  void act(() => call(acceptDatasetVersion, { params, body: { treatAsMissing: true } }))
+                }
+              >
                 Accept version {version.number}
               </Button>
               <Button onPress={() => void act(() => call(refuseDatasetVersion, { params }))}>Refuse</Button>

@@ -2,17 +2,28 @@ import type { DrawnSeries } from "@specs/figure-kind"
 
 const quoted = (text: string) => (/[",\n\r]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
 
-/** One drawn series as CSV with numbers in their shortest exact form; an empty cell is a missing value. @see RFC 4180 */
-export function seriesCsv(series: DrawnSeries): string {
-  const rows = series.columns[0]?.values.length ?? 0
-  const lines = [series.columns.map((column) => quoted(column.name)).join(",")]
-  for (let row = 0; row < rows; row += 1)
-    lines.push(
-      series.columns
-        .map((column) => (column.values[row] == null ? "" : String(column.values[row])))
-        .join(","),
-    )
-  return `${lines.join("\r\n")}\r\n`
+type Cell = number | string | null | undefined
+
+const line = (cells: readonly Cell[]) =>
+  cells.map((cell) => (cell == null ? "" : quoted(String(cell)))).join(",")
+
+/** Rows as CSV; numbers in their shortest exact form, an empty cell is a missing value. @see RFC 4180 */
+const csv = (header: readonly string[], rows: readonly (readonly Cell[])[]) =>
+  [header, ...rows].map((cells) => `${line(cells)}\r\n`).join("")
+
+const rowsOf = ({ columns }: DrawnSeries): Cell[][] =>
+  (columns[0]?.values ?? []).map((_, row) => columns.map(({ values }) => values[row]))
+const namesOf = ({ columns }: DrawnSeries) => columns.map(({ name }) => name)
+
+/** One drawn series as CSV. */
+export const seriesCsv = (series: DrawnSeries): string => csv(namesOf(series), rowsOf(series))
+
+/** A series of several curves in one table; the first column names the curve where there is more than one. */
+export function curvesCsv(curves: readonly DrawnSeries[]): string {
+  const [first] = curves
+  if (!first || curves.length === 1) return first ? seriesCsv(first) : ""
+  const rows = curves.flatMap((series) => rowsOf(series).map((row) => [series.curve, ...row]))
+  return csv(["curve", ...namesOf(first)], rows)
 }
 
 /** The Table Schema beside it: names, units, meanings. @see Frictionless Table Schema v2 */

@@ -83,6 +83,34 @@ export const getDataset = defineContract({
   answer: datasetAnswer,
 })
 
+const description = z.string().trim().max(10_000)
+
+export const createDataset = defineContract({
+  id: "createDataset",
+  method: "POST",
+  path: "/api/v1/manuscripts/{manuscriptId}/datasets",
+  summary: "Name a dataset before its first file; uploading makes it too.",
+  access: { who: "member", action: "dataset.upload" },
+  params: manuscriptParams,
+  body: z.object({ name: datasetName, description: description.default("") }).strict(),
+  status: 201,
+  answer: datasetAnswer,
+  problems: ["invalid-request", "name-taken"],
+})
+
+export const changeDataset = defineContract({
+  id: "changeDataset",
+  method: "PATCH",
+  path: "/api/v1/manuscripts/{manuscriptId}/datasets/{datasetName}",
+  summary: "Change what is said about a dataset. Its name stays: specs refer to it.",
+  access: { who: "member", action: "dataset.accept" },
+  params: datasetParams,
+  body: z.object({ description }).strict(),
+  status: 200,
+  answer: datasetAnswer,
+  problems: ["invalid-request"],
+})
+
 const upload = {
   path: "/api/v1/manuscripts/{manuscriptId}/datasets/{datasetName}/versions",
   access: { who: "member", action: "dataset.upload" },
@@ -99,7 +127,7 @@ export const pushDatasetVersion = defineContract({
   id: "pushDatasetVersion",
   method: "PUT",
   summary:
-    "Upload a file as the next version, as `curl -T` does; the dataset is made when it does not exist. The same bytes as the newest version: 200 and no new one.",
+    "Upload a file as the next version, as `curl -T` does; the dataset is made when it does not exist. The same bytes as the newest version: 200 and no new one. A Content-Digest (RFC 9530, sha-256) is checked.",
 })
 
 export const postDatasetVersion = defineContract({
@@ -152,12 +180,26 @@ export const acceptDatasetVersion = defineContract({
   id: "acceptDatasetVersion",
   method: "POST",
   path: "/api/v1/manuscripts/{manuscriptId}/datasets/{datasetName}/versions/{number}/accept",
-  summary: "Accept a version as read: listed cells count as missing. It never changes again.",
+  summary:
+    "Accept a version as read; it never changes again. Where cells or rows could not be read, say that they count as missing.",
   access: { who: "member", action: "dataset.accept" },
+  params: versionParams,
+  body: z.object({ treatAsMissing: z.boolean().default(false) }).strict(),
+  status: 200,
+  answer: datasetVersionAnswer,
+  problems: ["invalid-request", "conflict", "locked"],
+})
+
+export const cancelReading = defineContract({
+  id: "cancelReading",
+  method: "POST",
+  path: "/api/v1/manuscripts/{manuscriptId}/datasets/{datasetName}/versions/{number}/cancel",
+  summary: "Stop the reading of a file. It can be read again by changing its recipe.",
+  access: { who: "member", action: "dataset.upload" },
   params: versionParams,
   status: 200,
   answer: datasetVersionAnswer,
-  problems: ["conflict", "locked"],
+  problems: ["conflict"],
 })
 
 export const refuseDatasetVersion = defineContract({
@@ -187,22 +229,29 @@ export const getColumns = defineContract({
   id: "getColumns",
   method: "GET",
   path: "/api/v1/manuscripts/{manuscriptId}/datasets/{datasetName}/versions/{number}/columns",
-  summary: "All columns of an accepted version in one binary answer; docs/api.md describes it.",
+  summary:
+    "Columns of an accepted version in one binary answer, all or those named; docs/api.md describes the format.",
   access: { who: "member", action: "dataset.read" },
   params: versionParams,
+  /** `names` may be repeated. */
+  query: z.object({ names: z.union([z.string(), z.array(z.string()).max(4096)]).optional() }),
   status: 200,
   answer: "application/octet-stream",
-  problems: ["conflict"],
+  problems: ["invalid-request", "conflict"],
+  headers: { ETag: "Changes with the data and the columns asked for." },
 })
 
 export const datasetContracts = [
   listDatasets,
+  createDataset,
   getDataset,
+  changeDataset,
   pushDatasetVersion,
   postDatasetVersion,
   getDatasetVersion,
   changeDatasetVersion,
   acceptDatasetVersion,
+  cancelReading,
   refuseDatasetVersion,
   getOriginal,
   getColumns,

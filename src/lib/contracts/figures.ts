@@ -202,7 +202,7 @@ export const getArtwork = defineContract({
   id: "getArtwork",
   method: "GET",
   path: `${base}/{figureId}/versions/{number}/artwork/{format}`,
-  summary: "The proof in one format: svg, png or pdf.",
+  summary: "The proof in one format, at its printed size; with download=1 as an attachment.",
   access: { who: "member", action: "figure.read" },
   params: figureVersionParams.extend({ format: z.enum(renderingFormats) }),
   query: z.object({ download: z.enum(["0", "1"]).default("0") }),
@@ -223,6 +223,48 @@ export const getResults = defineContract({
   headers: { ETag: "SHA-256 of the bytes." },
 })
 
+export const getSeries = defineContract({
+  id: "getSeries",
+  method: "GET",
+  path: `${base}/{figureId}/versions/{number}/series.csv`,
+  summary: "The numbers of one drawn series as CSV; with several curves the first column names the curve.",
+  access: { who: "member", action: "figure.read" },
+  params: figureVersionParams,
+  query: z.object({
+    /** Counted from 1. */
+    panel: z.coerce.number().int().min(1).default(1),
+    /** "mean", "fit", "band" …; the first series of the panel when it is left out. */
+    series: z.string().max(100).optional(),
+  }),
+  status: 200,
+  answer: "text/csv",
+  problems: ["invalid-request"],
+})
+
+export const cancelComputation = defineContract({
+  id: "cancelComputation",
+  method: "POST",
+  path: `${base}/{figureId}/versions/{number}/cancel`,
+  summary: "Stop computing a version.",
+  access: { who: "member", action: "figure.edit" },
+  params: figureVersionParams,
+  status: 200,
+  answer: figureVersionAnswer,
+  problems: ["conflict"],
+})
+
+export const computeAgain = defineContract({
+  id: "computeAgain",
+  method: "POST",
+  path: `${base}/{figureId}/versions/{number}/compute`,
+  summary: "Compute a version again after it failed or was cancelled.",
+  access: { who: "member", action: "figure.edit" },
+  params: figureVersionParams,
+  status: 200,
+  answer: figureVersionAnswer,
+  problems: ["conflict"],
+})
+
 export const figureContracts = [
   listFigures,
   createFigure,
@@ -232,4 +274,7 @@ export const figureContracts = [
   getFigureVersion,
   getArtwork,
   getResults,
+  getSeries,
+  cancelComputation,
+  computeAgain,
 ] as const

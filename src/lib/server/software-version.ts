@@ -10,6 +10,8 @@ export interface SoftwareVersion {
   /** SHA-256 of package-lock.json. */
   readonly lockfileSha256: string
   readonly node: string
+  /** What compresses bundles: another version may pack the same files into other bytes. */
+  readonly zlib: string
 }
 
 /** The checkout's folder, found upwards from this file, which may be bundled into dist/. */
@@ -35,6 +37,7 @@ export function softwareVersion(): SoftwareVersion {
     version,
     lockfileSha256: createHash("sha256").update(lockfile).digest("hex"),
     node: process.versions.node,
+    zlib: process.versions.zlib ?? "unknown",
   }
   return known
 }

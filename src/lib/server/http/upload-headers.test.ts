@@ -8,8 +8,10 @@ test("the file name of a Content-Disposition", () => {
   expect(disposition('attachment; filename="run 1.csv"')).toBe("run 1.csv")
   expect(disposition('attachment; filename="say \\"a\\".csv"')).toBe('say "a".csv')
   expect(disposition("attachment; filename=run.csv; size=3")).toBe("run.csv")
-  // RFC 8187, section 3.2.3, the example of section 4.2 of RFC 6266: the extended form wins.
-  expect(disposition("attachment; filename=\"EURO rates\"; filename*=utf-8''%e2%82%ac%20rates")).toBe("€ rates")
+  // RFC 6266, section 5, last example: the extended form wins.
+  expect(disposition("attachment; filename=\"EURO rates\"; filename*=utf-8''%e2%82%ac%20rates")).toBe(
+    "€ rates",
+  )
   expect(disposition("attachment")).toBeUndefined()
   expect(() => disposition("attachment; filename*=UTF-8''%ff")).toThrow(/invalid-request/)
 })
@@ -22,7 +24,7 @@ test("folders and control characters of a file name are left out", () => {
 })
 
 test("the checksum of a Content-Digest", () => {
-  // RFC 9530, appendix A: {"hello": "world"} and a line feed.
+  // RFC 9530, appendix B.1.
   const example = "RK/0qy18MlBSVnWgjwz6lZEWjP/lF5HF9bvEF8FabDg="
   expect(digest(`sha-256=:${example}:`)?.toString("base64")).toBe(example)
   expect(digest(`sha-512=:YQ==:, sha-256=:${example}:`)?.toString("base64")).toBe(example)

@@ -43,6 +43,5 @@ export function announcedFileName(headers: Headers): string | undefined {
 /** A file name as it is kept: the last part of a path, without control characters, 255 characters at most. */
 export function plainFileName(name: string): string | undefined {
   const last = name.split(/[/\\]/).pop() ?? ""
-  // eslint-disable-next-line no-control-regex -- control characters are what is taken out
   return last.replace(/[\x00-\x1f\x7f]/g, "").slice(0, 255) || undefined
 }

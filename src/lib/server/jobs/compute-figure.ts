@@ -6,14 +6,18 @@ import { JobFailure, runInChild } from "./run-in-child"
 
 const bounds = { timeoutMs: 10 * 60_000, memoryMb: 2048 }
 
+interface Failure {
+  readonly message: string
+  readonly errors?: readonly object[] | undefined
+}
+
 /** Job `compute-figure`: results and proof of a figure version, in a process of its own. */
 export const computeFigureJob: Task = async (payload) => {
   const { figureVersionId } = payload as { figureVersionId: string }
   const db = getDb()
-  const started = await db
-    .updateTable("computation")
+  const running = () => db.updateTable("computation").where("figureVersionId", "=", figureVersionId)
+  const started = await running()
     .set({ state: "computing", startedAt: new Date() })
-    .where("figureVersionId", "=", figureVersionId)
     .where("state", "in", ["queued", "computing"])
     .executeTakeFirst()
   // Cancelled or done meanwhile.
@@ -25,50 +29,51 @@ export const computeFigureJob: Task = async (payload) => {
     .where("figureVersion.id", "=", figureVersionId)
     .executeTakeFirstOrThrow()
   const { manuscriptId } = version
-  const finish = (failure: { message: string; errors?: readonly object[] | undefined } | null) =>
-    db.transaction().execute(async (trx) => {
-      if (failure)
-        await trx
-          .updateTable("computation")
-          .set({ state: "failed", failure: JSON.stringify(failure), finishedAt: new Date() })
-          .where("figureVersionId", "=", figureVersionId)
-          .execute()
-      await insertEvent(trx, {
-        manuscriptId,
-        personId: null,
-        kind: failure ? "figure-version.failed" : "figure-version.computed",
-        subject: figureVersionId,
-        data: { figure: version.name, figureId: version.figureId, number: version.number },
-      })
+  const tell = (kind: "computed" | "failed") =>
+    insertEvent(db, {
+      manuscriptId,
+      personId: null,
+      kind: `figure-version.${kind}`,
+      subject: figureVersionId,
+      data: { figure: version.name, figureId: version.figureId, number: version.number },
     })
+  const fail = async (failure: Failure) => {
+    await running()
+      .set({ state: "failed", progress: null, failure: JSON.stringify(failure), finishedAt: new Date() })
+      .where("state", "=", "computing")
+      .execute()
+    await tell("failed")
+  }
+  const showProgress = async (share: number, what: string) => {
+    await running()
+      .set({ progress: JSON.stringify({ share, what }) })
+      .where("state", "=", "computing")
+      .execute()
+    const kind = "figure-version.progress"
+    await notifyProgress(db, { manuscriptId, subject: figureVersionId, kind, share, what })
+  }
   try {
-    const answer = await runInChild("compute-figure", { figureVersionId }, bounds, (share, what) => {
-      const progress = { share, what }
-      Promise.all([
-        db
-          .updateTable("computation")
-          .set({ progress: JSON.stringify(progress) })
+    const answer = await runInChild("compute-figure", { figureVersionId }, bounds, {
+      isWanted: async () => {
+        const { state } = await db
+          .selectFrom("computation")
+          .select("state")
           .where("figureVersionId", "=", figureVersionId)
-          .where("state", "=", "computing")
-          .execute(),
-        notifyProgress(db, {
-          manuscriptId,
-          subject: figureVersionId,
-          kind: "figure-version.progress",
-          ...progress,
-        }),
-      ]).catch((error: Error) =>
-        console.error(`progress of ${figureVersionId} was not told: ${error.message}`),
-      )
+          .executeTakeFirstOrThrow()
+        return state !== "cancelled"
+      },
+      onProgress: (share, what) =>
+        void showProgress(share, what).catch((error: Error) =>
+          console.error(`progress of ${figureVersionId} was not told: ${error.message}`),
+        ),
     })
-    await finish(answer.type === "failure" ? { message: answer.message ?? "", errors: answer.errors } : null)
+    if (answer.type === "done") await tell("computed")
+    else if (answer.type === "failure") await fail(answer)
   } catch (error) {
-    const known = error instanceof JobFailure
-    await finish({
-      message: known
-        ? error.message
-        : "Computing the figure failed on the server. Save it again; if it stays, report it.",
+    if (error instanceof JobFailure) return fail({ message: error.message })
+    await fail({
+      message: "Computing the figure failed on the server. Compute it again; if it stays, report it.",
     })
-    if (!known) throw error
+    throw error
   }
 }

@@ -28,7 +28,7 @@ export const makeBundleJob: Task = async (payload, { job }) => {
       data: { number: bundle.number },
     })
   try {
-    await runInChild("make-bundle", { bundleId }, bounds, () => {})
+    await runInChild("make-bundle", { bundleId }, bounds)
   } catch (error) {
     if (job.attempts >= job.max_attempts) {
       const message = "Making the bundle failed on the server; report it with the number of the draft."

@@ -89,12 +89,12 @@ async function storeReading(trx: Db, datasetVersionId: string, reading: TableRea
         reading.columns.map((column) => ({
           datasetVersionId,
           columnIndex: column.index,
-          name: column.name,
-          unit: column.unit || null,
-          symbol: column.symbol,
+          name: storable(column.name),
+          unit: column.unit ? storable(column.unit) : null,
+          symbol: column.symbol === null ? null : storable(column.symbol),
           role: column.role,
           kind: column.kind === "number" || column.kind === "boolean" ? "number" : "text",
-          statistics: JSON.stringify({
+          statistics: storableJson({
             count: column.count,
             min: column.min,
             max: column.max,
@@ -107,19 +107,26 @@ async function storeReading(trx: Db, datasetVersionId: string, reading: TableRea
         })),
       )
       .execute()
-  await trx
+  const { numUpdatedRows } = await trx
     .updateTable("datasetVersion")
     .set({
       state: reading.refused ? "failed" : "proposed",
       format: reading.format,
-      reading: JSON.stringify(reading),
-      recipe: JSON.stringify(reading.recipe),
-      rows: reading.rows,
-      failure: reading.refused && JSON.stringify(reading.refused),
+      reading: storableJson(reading),
+      recipe: storableJson(reading.recipe),
+      rows: reading.refused ? null : reading.rows,
+      failure: reading.refused && storableJson(reading.refused),
     })
     .where("id", "=", datasetVersionId)
-    .execute()
+    .where("state", "=", "reading")
+    .executeTakeFirst()
+  if (numUpdatedRows === 0n) throw new Error("The reading was cancelled.")
 }
+
+/** PostgreSQL's text holds no NUL and no half of a surrogate pair; a file's names and cells may. */
+const storable = (text: string) => text.replace(/\p{Surrogate}/gu, "\ufffd").replaceAll("\0", "\ufffd")
+const storableJson = (value: unknown) =>
+  JSON.stringify(value, (_, part: unknown) => (typeof part === "string" ? storable(part) : part))
 
 await main()
 process.disconnect?.()

@@ -12,6 +12,22 @@ export interface ChildMessage {
   readonly errors?: readonly object[]
 }
 
+/** How a piece of work ended; "cancelled" when it was stopped because it was not wanted any more. */
+export type ChildAnswer =
+  | { readonly type: "done" | "cancelled" }
+  | { readonly type: "failure"; readonly message: string; readonly errors?: readonly object[] | undefined }
+
+export interface Bounds {
+  readonly timeoutMs: number
+  readonly memoryMb: number
+}
+
+interface Watch {
+  readonly onProgress?: (share: number, what: string) => void
+  /** Asked every second; the work is stopped when it says no. */
+  readonly isWanted?: () => Promise<boolean>
+}
+
 /**
  * Runs one of our programs on one piece of work in a process of its own, with bounds on time and memory: whatever a
  * hostile file does there, the worker lives on.
@@ -22,45 +38,48 @@ export interface ChildMessage {
 export async function runInChild(
   program: string,
   work: Readonly<Record<string, string>>,
-  bounds: {
-    readonly timeoutMs: number
-    readonly memoryMb: number
-    readonly signal?: AbortSignal | undefined
-  },
-  onProgress: (share: number, what: string) => void,
-): Promise<ChildMessage> {
+  { timeoutMs, memoryMb }: Bounds,
+  { onProgress, isWanted }: Watch = {},
+): Promise<ChildAnswer> {
   const child = fork(fileURLToPath(new URL(`./${program}.mjs`, import.meta.url)), [JSON.stringify(work)], {
-    execArgv: [`--max-old-space-size=${bounds.memoryMb}`],
+    execArgv: [`--max-old-space-size=${memoryMb}`],
     stdio: ["ignore", "inherit", "inherit", "ipc"],
   })
-  return new Promise<ChildMessage>((resolve, reject) => {
-    let answer: ChildMessage | undefined
-    let timedOut = false
-    const stop = () => child.kill("SIGKILL")
-    const timer = setTimeout(() => {
-      timedOut = true
-      stop()
-    }, bounds.timeoutMs)
-    bounds.signal?.addEventListener("abort", stop)
-    child.on("message", (message: ChildMessage) => {
-      if (message.type === "progress") onProgress(message.share ?? 0, message.what ?? "")
-      else answer = message
-    })
-    child.once("error", reject)
-    child.once("exit", (code, signal) => {
-      clearTimeout(timer)
-      bounds.signal?.removeEventListener("abort", stop)
-      if (answer?.type === "done") resolve(answer)
-      else if (answer?.type === "failure") resolve(answer)
-      else if (timedOut)
-        reject(
-          new JobFailure(`It did not end within ${Math.round(bounds.timeoutMs / 1000)} s and was stopped.`),
-        )
-      else if (signal === "SIGABRT" || code === 134)
-        reject(new JobFailure(`It needed more than ${bounds.memoryMb} MB of memory and was stopped.`))
-      else reject(new Error(`${program} ended with ${signal ?? `code ${code}`} and without a word.`))
-    })
+  let answer: ChildAnswer | undefined
+  let stopped: "timed out" | "cancelled" | undefined
+  const stop = (reason: typeof stopped) => {
+    stopped ??= reason
+    child.kill("SIGKILL")
+  }
+  const timer = setTimeout(() => stop("timed out"), timeoutMs)
+  const watch = setInterval(() => {
+    isWanted?.().then(
+      (wanted) => wanted || stop("cancelled"),
+      (error: Error) =>
+        console.error(`worker: whether ${program} is still wanted is unknown: ${error.message}`),
+    )
+  }, 1000)
+  child.on("message", (message: ChildMessage) => {
+    if (message.type === "progress") onProgress?.(message.share ?? 0, message.what ?? "")
+    else if (message.type === "done") answer = { type: "done" }
+    else answer = { type: "failure", message: message.message ?? "", errors: message.errors }
   })
+  try {
+    const [code, signal] = await new Promise<[number | null, NodeJS.Signals | null]>((resolve, reject) => {
+      child.once("error", reject)
+      child.once("exit", (...end) => resolve(end))
+    })
+    if (answer) return answer
+    if (stopped === "cancelled") return { type: "cancelled" }
+    if (stopped === "timed out")
+      throw new JobFailure(`It did not end within ${Math.round(timeoutMs / 1000)} s and was stopped.`)
+    if (signal === "SIGABRT" || code === 134)
+      throw new JobFailure(`It needed more than ${memoryMb} MB of memory and was stopped.`)
+    throw new Error(`${program} ended with ${signal ?? `code ${code}`} and without a word.`)
+  } finally {
+    clearTimeout(timer)
+    clearInterval(watch)
+  }
 }
 
 /** The other side: what a program of `runInChild` was asked to do. */

@@ -159,7 +159,7 @@ export function cancelReading(db: Db, place: DatasetVersionPlace, personId: stri
     const message = "The reading was cancelled. Read the file again, or refuse it."
     const { numUpdatedRows } = await trx
       .updateTable("datasetVersion")
-      .set({ state: "failed", failure: JSON.stringify({ message }) })
+      .set({ state: "failed", failure: JSON.stringify({ message, cancelled: true }) })
       .where("id", "=", id)
       .where("state", "in", ["uploaded", "reading"])
       .executeTakeFirst()

@@ -48,18 +48,31 @@ export async function storeBlob(
   for await (const data of inParts(pieces)) {
     size += data.length
     if (size > limit)
-      throw new Problem("too-large", `The file is larger than ${limit / 1e6} MB, the limit for one file.`)
+      throw new Problem(
+        "too-large",
+        `The file is larger than ${limit / 1e6} MB, the limit for one file. Nothing was stored.`,
+        [],
+        { connection: "close" },
+      )
     hash.update(data)
     await trx.insertInto("blobChunk").values({ blobId: id, part, data }).execute()
     part += 1
   }
   if (size === 0) throw new Problem("invalid-request", "The file has no bytes.")
   const sha256 = hash.digest()
-  const known = await trx.selectFrom("blob").select("id").where("sha256", "=", sha256).executeTakeFirst()
-  if (known) {
-    await trx.deleteFrom("blobChunk").where("blobId", "=", id).execute()
-    return { id: known.id, sha256, size }
-  }
-  await trx.insertInto("blob").values({ id, sha256, size }).execute()
-  return { id, sha256, size }
+  // Waits for another upload of the same bytes that is about to write them down.
+  const written = await trx
+    .insertInto("blob")
+    .values({ id, sha256, size })
+    .onConflict((conflict) => conflict.column("sha256").doNothing())
+    .returning("id")
+    .executeTakeFirst()
+  if (written) return { id, sha256, size }
+  await trx.deleteFrom("blobChunk").where("blobId", "=", id).execute()
+  const known = await trx
+    .selectFrom("blob")
+    .select("id")
+    .where("sha256", "=", sha256)
+    .executeTakeFirstOrThrow()
+  return { id: known.id, sha256, size }
 }

@@ -1,0 +1,11 @@
+import type { RenderingVersions } from "@/lib/render"
+import type { SoftwareVersion } from "@/lib/server/software-version"
+
+/** What is kept with a result besides its numbers: what made it, and the words that go with it. */
+export interface FigureSoftware {
+  readonly version: SoftwareVersion
+  readonly rendering: RenderingVersions
+  readonly alternativeText: string
+  /** The statistics part of the caption. */
+  readonly sentence: string
+}
