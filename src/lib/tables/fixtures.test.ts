@@ -1,8 +1,9 @@
 import { readFileSync, readdirSync } from "node:fs"
 import path from "node:path"
-import { describe, expect, test } from "vitest"
+import { beforeAll, describe, expect, test } from "vitest"
 import { bytesSource } from "./source/byte-source"
 import { readTable } from "./read-table"
+import type { RecipeInput } from "./reading-recipe"
 import type { TableReading } from "./table-reading"
 
 const folder = path.resolve("tests/fixtures")
@@ -12,6 +13,8 @@ interface ExpectedColumn {
   readonly unit?: string
   readonly kind: string
   readonly role?: string
+  readonly axes?: readonly string[]
+  readonly long_name?: string
   readonly count: number
   readonly missingCount: number
   readonly firstValues: readonly unknown[]
@@ -40,7 +43,7 @@ interface Expected {
   readonly headerLines?: readonly number[]
 }
 
-const only = /\.(csv|tsv|txt|dat|gz|npy|npz)$/
+const only = /\.(csv|tsv|txt|dat|gz|npy|npz|h5)$/
 const names = readdirSync(folder)
   .filter((name) => name.endsWith(".expected.json"))
   .map((name) => name.replace(".expected.json", ""))
@@ -52,10 +55,14 @@ const places = (problems: Expected["problems"]) =>
 // Files and numbers come from other programs; tests/fixtures/README.md says which. Sums there are exact (math.fsum).
 describe.each(names)("%s", (name) => {
   const expected = JSON.parse(readFileSync(path.join(folder, `${name}.expected.json`), "utf8")) as Expected
-  const read = () => readTable(bytesSource(name, readFileSync(path.join(folder, name))))
+  const read = (recipe?: RecipeInput) =>
+    readTable(bytesSource(name, readFileSync(path.join(folder, name))), { recipe: recipe ?? null })
+  let reading: TableReading
+  beforeAll(async () => {
+    reading = await read()
+  })
 
-  test("has the columns and values that its maker wrote", async () => {
-    const reading = await read()
+  test("has the columns and values that its maker wrote", () => {
     expect(reading.refused).toBeNull()
     expect(reading.format).toBe(expected.format)
     expect(reading.columns.map((column) => column.name)).toEqual(
@@ -63,15 +70,16 @@ describe.each(names)("%s", (name) => {
     )
     expected.columns.forEach((column, index) => {
       const found = reading.columns[index]!
-      const { sum, sumAbs, unit, ...same } = column
+      const { sum, sumAbs, unit, axes, long_name: longName, ...same } = column
       expect(found).toMatchObject(same)
+      if (axes) expect(found.axes?.map((axis) => axis.name)).toEqual(axes)
+      if (longName) expect(found.longName).toBe(longName)
       expect(found.unit ?? "").toBe(unit ?? "")
       if (sum !== undefined) expect(Math.abs(found.sum! - sum)).toBeLessThanOrEqual(1e-12 * (sumAbs || 1))
     })
   })
 
-  test("has the listed problems, notes, recipe and metadata", async () => {
-    const reading = await read()
+  test("has the listed problems, notes, recipe and metadata", () => {
     const open = reading.asks.map(({ code, line }) => ({ code, line: line ?? "", column: null }))
     expect(places([...(reading.problems as Expected["problems"]), ...open])).toEqual(
       places(expected.problems),
@@ -91,10 +99,8 @@ describe.each(names)("%s", (name) => {
   })
 
   test("reads the same when its recipe is fed back", async () => {
-    const first = await read()
-    const again = await readTable(bytesSource(name, readFileSync(path.join(folder, name))), {
-      recipe: first.recipe,
-    })
+    const first = reading
+    const again = await read(first.recipe)
     expect(again.columns.map(({ roleReason: _, ...column }) => column)).toEqual(
       first.columns.map(({ roleReason: _, ...column }) => column),
     )

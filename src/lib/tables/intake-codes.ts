@@ -141,6 +141,7 @@ export const intakeCodes = {
   "hdf5-external": problem("{name} points to another file; not followed."),
   "hdf5-type": problem("{name}: type {type} is not read."),
   "hdf5-read": problem("{name} could not be read (damaged chunk?)."),
+  "hdf5-chunk": problem("{name}: chunks of more than {max} bytes are not read."),
   "hdf5-link": problem("{name}: link to nothing."),
   "hdf5-link-repeated": note("{name} is another name of {other}."),
   "hdf5-depth": problem("{name}: groups nested more than {max} deep are not read."),

@@ -12,6 +12,8 @@ export interface IntakeLimits {
   /** Problems listed for each code; all are counted. */
   readonly maxListed: number
   readonly maxArchiveEntries: number
+  /** Time that the reader of a damaged HDF5 file may take for one step. */
+  readonly maxAnswerMs: number
 }
 
 export const intakeLimits: IntakeLimits = {
@@ -23,6 +25,7 @@ export const intakeLimits: IntakeLimits = {
   maxTextBytesPerPart: 64 * 1024 * 1024,
   maxListed: 1000,
   maxArchiveEntries: 1000,
+  maxAnswerMs: 30_000,
 }
 
 /** Rows of a part of a column: what one chunk holds. */

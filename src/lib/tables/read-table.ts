@@ -1,5 +1,6 @@
 import type { ColumnSink } from "./column-chunk"
 import { type ContentFormat, detectFormat, formatOfHead, otherFormatInName } from "./detect-format"
+import { readHdf5 } from "./hdf5/read-hdf5"
 import { IntakeRefusal, sentence } from "./intake-codes"
 import { intakeLimits } from "./intake-limits"
 import { readNpy } from "./npy/read-npy"
@@ -117,6 +118,7 @@ async function readPlain(
   const stream = { name: source.name, size: source.size, open: () => source.stream() }
   if (format === "npy") return readNpy(stream, context)
   if (format === "text") return readText(stream, context)
+  if (format === "hdf5") return readHdf5(source, context)
   throw new IntakeRefusal("unreadable-format", { format })
 }
 

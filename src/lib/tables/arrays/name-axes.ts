@@ -36,26 +36,25 @@ export function nameAxes(
   const matched: { axis: number; coordinate: string }[] = []
   const axes = shape.map((length, axis): ArrayAxis => {
     const fits = lines.filter((other) => other.shape[0] === length)
-    const byName = (name: string) =>
-      fits.find(({ outputs }) => outputs[0]!.name === name || lastPart(outputs[0]!.name) === name)
-        ?.outputs[0]!.name ?? null
-    const toldName = told?.[axis]
-    if (toldName !== undefined) return { name: toldName, length, coordinate: byName(toldName) }
+    const columnOf = (name: string) =>
+      fits
+        .map(({ outputs }) => outputs[0]!.name)
+        .find((column) => column === name || lastPart(column) === name) ?? null
     const scale = source.scales[axis] ?? null
-    const label = source.labels[axis] ?? null
-    if (scale !== null) {
-      const coordinate = byName(scale)
-      return { name: label ?? (coordinate ? lastPart(coordinate) : scale), length, coordinate }
-    }
-    if (label !== null) return { name: label, length, coordinate: byName(label) }
+    const attached = scale === null ? null : columnOf(scale)
+    const given = source.labels[axis] ?? (attached === null ? scale : lastPart(attached))
     const candidates = beside.filter((other) => other.shape[0] === length)
-    const alone = shape.filter((other) => other === length).length === 1
-    if (candidates.length === 1 && alone) {
-      const coordinate = candidates[0]!.outputs[0]!.name
-      matched.push({ axis, coordinate })
-      return { name: lastPart(coordinate), length, coordinate }
+    const alone = candidates.length === 1 && shape.filter((other) => other === length).length === 1
+    const matching = given === null && alone ? candidates[0]!.outputs[0]!.name : null
+    const toldName = told?.[axis] ?? null
+    if (matching !== null) matched.push({ axis, coordinate: matching })
+    const name = toldName ?? given ?? (matching === null ? null : lastPart(matching))
+    const named = name === null ? null : columnOf(name)
+    return {
+      name,
+      length,
+      coordinate: toldName === null ? (attached ?? named) : (named ?? attached ?? matching),
     }
-    return { name: null, length, coordinate: null }
   })
   return { axes, open: axes.some(({ name }) => name === null), matched }
 }
