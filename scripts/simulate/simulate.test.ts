@@ -2,7 +2,10 @@ import { readFileSync } from "node:fs"
 import { describe, expect, test } from "vitest"
 import { simulateCornerGrowth } from "./corner-growth"
 import { simulateExclusionFront } from "./exclusion-front"
+import { simulateMomenta } from "./bath-momenta"
 import { logTimes } from "./log-times"
+import { simulateMeetingTimes } from "./meeting-times"
+import { simulateMerging } from "./merging-clusters"
 import { simulateAnnihilation } from "./pair-annihilation"
 
 /** Mean over trajectories at each index, and its standard error. */
@@ -88,6 +91,53 @@ describe("the exclusion process from a step", () => {
     // Sites -200..0 are full at the start; within t = 60 nothing has left the cells.
     expect(particles(0)).toBe(201)
     expect(particles(1)).toBe(201)
+  })
+})
+
+test("two walkers on a ring meet after L^2 / (8 G) on average", () => {
+  // (L/2)^2 steps of the distance at rate 2 G: Feller, volume I, chapter XIV.3.
+  const [{ mean, error }] = summary(
+    Array.from(simulateMeetingTimes(32, 2, 2000, 11), (time) => Float64Array.of(time)),
+  ) as [{ mean: number; error: number }]
+  expect(Math.abs(mean - 32 ** 2 / 16)).toBeLessThan(within * error)
+})
+
+test("the mean size of merging clusters is 1/(1 - t)", () => {
+  // Erdős & Rényi 1960; corrections are of relative order 1/(N (1 - t)^3), below 0.01 here.
+  const times = [0, 0.3, 0.6, 0.8]
+  const means = summary(simulateMerging({ particles: 50_000, trajectories: 20, times, seed: 12 }))
+  expect(means[0]!.mean).toBe(1)
+  times.slice(1).forEach((t, k) => {
+    const { mean, error } = means[k + 1]!
+    expect(Math.abs(mean - 1 / (1 - t))).toBeLessThan(within * error + 0.01 * mean)
+  })
+})
+
+test("momenta in a bath have the variance of an Ornstein-Uhlenbeck process", () => {
+  // hot + (cold - hot) exp(-2 t): Uhlenbeck & Ornstein 1930; bins of width h add h^2/12 (Sheppard).
+  const edges = Array.from({ length: 66 }, (_, k) => -6.5 + 0.2 * k)
+  const times = [0, 0.5, 2]
+  const rows = simulateMomenta({
+    particles: 500,
+    trajectories: 40,
+    times,
+    cold: 0.25,
+    hot: 1,
+    edges,
+    seed: 13,
+  })
+  const bins = edges.length - 1
+  const variances = rows.map((counts) =>
+    Float64Array.from(times, (_, k) => {
+      const moment = (power: number) =>
+        edges.slice(1).reduce((sum, edge, b) => sum + (edge - 0.1) ** power * counts[k * bins + b]!, 0) / 500
+      return moment(2) - moment(1) ** 2
+    }),
+  )
+  summary(variances).forEach(({ mean, error }, k) => {
+    // A variance about each trajectory's own mean of 500 particles is short by one part in 500.
+    const exact = (1 + (0.25 - 1) * Math.exp(-2 * times[k]!)) * (499 / 500) + 0.2 ** 2 / 12
+    expect(Math.abs(mean - exact)).toBeLessThan(within * error)
   })
 })
 
