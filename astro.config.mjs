@@ -1,9 +1,12 @@
+import { fileURLToPath } from "node:url"
 import node from "@astrojs/node"
 import react from "@astrojs/react"
 import auth from "auth-astro"
 import tailwindcss from "@tailwindcss/vite"
 import { defineConfig } from "astro/config"
 import { bundlePrograms } from "./scripts/bundle-programs.mjs"
+
+const here = (folder) => fileURLToPath(new URL(folder, import.meta.url))
 
 export default defineConfig({
   output: "server",
@@ -15,6 +18,8 @@ export default defineConfig({
   experimental: {
     // Sent as a header with every page. The middleware adds what Astro has no word for: style attributes, which React sets.
     csp: {
+      // The one style element that the controls' library adds (how touches scroll).
+      styleDirective: { hashes: ["sha256-38RhXrc7EdReTKsOm23ZPOCUgniTUUcjky8QOOrQx6o="] },
       directives: [
         "default-src 'self'",
         "img-src 'self' data: blob:",
@@ -29,6 +34,8 @@ export default defineConfig({
     },
   },
   vite: {
+    // Astro takes aliases from tsconfig.json, but not for workers.
+    resolve: { alias: { "@specs": here("./figure-specs"), "@": here("./src") } },
     plugins: [tailwindcss()],
     // Scripts stay files, so that the policy needs no hash for each of them.
     build: { assetsInlineLimit: 0, chunkSizeWarningLimit: 1500 },

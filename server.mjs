@@ -33,6 +33,8 @@ const headers = {
 }
 /** What is not a page runs and loads nothing. A page's own policy replaces this one. */
 const filePolicy = "default-src 'none'; frame-ancestors 'none'; sandbox"
+/** A script that runs as a worker lives under its own policy: it loads its parts and calls our API. */
+const scriptPolicy = "default-src 'none'; script-src 'self'; connect-src 'self'; frame-ancestors 'none'"
 
 /** The nearest address that is not one of the proxies we were told to believe. */
 function clientAddress(request) {
@@ -85,7 +87,7 @@ const server = http.createServer(
     const pathname = decodeURI(url.split("?")[0])
     const isRead = request.method === "GET" || request.method === "HEAD"
     if (isRead && fileOf(pathname)) {
-      response.setHeader("Content-Security-Policy", filePolicy)
+      response.setHeader("Content-Security-Policy", pathname.endsWith(".js") ? scriptPolicy : filePolicy)
       const hashed = pathname.startsWith("/_astro/")
       send(request, pathname, { root: client, index: false, immutable: hashed, maxAge: hashed ? "1y" : "1h" })
         .on("directory", () =>

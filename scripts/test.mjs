@@ -1,5 +1,5 @@
 import { spawn } from "node:child_process"
-import { existsSync, mkdirSync, mkdtempSync, readFileSync, rmSync } from "node:fs"
+import { chmodSync, existsSync, mkdirSync, mkdtempSync, readFileSync, rmSync } from "node:fs"
 import path from "node:path"
 import { fileURLToPath } from "node:url"
 import { ensureBuild } from "./build.mjs"
@@ -83,6 +83,8 @@ await run(async () => {
   const scratchRoot = path.join(root, ".data")
   mkdirSync(scratchRoot, { recursive: true })
   const scratch = mkdtempSync(path.join(scratchRoot, "test-"))
+  // The server's user passes through it to its data; the secrets in it keep their own mode.
+  chmodSync(scratch, 0o711)
   const results = []
   let server
   const cleanUp = async () => {

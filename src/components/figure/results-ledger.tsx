@@ -61,7 +61,7 @@ export function ResultsLedger({ panels }: { panels: readonly Panel[] }) {
           wideOnly: true,
           cell: ({ quantity: { theory } }) =>
             theory
-              ? `${theory.value}${theory.label ? ` (${theory.label})` : ""}: ${theory.standardErrors.toFixed(1).replace("-", "−")} SE, ${theory.words}`
+              ? `${String(theory.value).replace("-", "−")}${theory.label ? ` (${theory.label})` : ""}: ${theory.standardErrors.toFixed(1).replace("-", "−")} SE, ${theory.words}`
               : "",
         },
       ]}

@@ -50,7 +50,7 @@ export function QuantitiesPage({
               wideOnly: true,
               cell: ({ quantity: { theory } }) =>
                 theory
-                  ? `${theory.value}${theory.label ? ` (${theory.label})` : ""}: ${theory.standardErrors.toFixed(1).replace("-", "−")} SE, ${theory.words}`
+                  ? `${String(theory.value).replace("-", "−")}${theory.label ? ` (${theory.label})` : ""}: ${theory.standardErrors.toFixed(1).replace("-", "−")} SE, ${theory.words}`
                   : "",
             },
             {

@@ -128,7 +128,7 @@ function SetChart({
     () => [
       ...frameShapes(drawing, frame),
       ...texts,
-      ...insideShapes(drawing, frame, ink, set, { legend: true, taken: [] }),
+      ...insideShapes(drawing, frame, ink, set, { legend: true, taken: [] }).shapes,
     ],
     [drawing, frame, texts, ink, set],
   )
