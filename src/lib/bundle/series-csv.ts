@@ -1,17 +1,11 @@
+import { type CsvCell, csvLine } from "@/lib/domain/csv"
 import type { DrawnSeries } from "@specs/figure-kind"
 
-const quoted = (text: string) => (/[",\n\r]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
+/** Rows as CSV; numbers in their shortest exact form, an empty cell is a missing value. */
+const csv = (header: readonly string[], rows: readonly (readonly CsvCell[])[]) =>
+  [header, ...rows].map(csvLine).join("")
 
-type Cell = number | string | null | undefined
-
-const line = (cells: readonly Cell[]) =>
-  cells.map((cell) => (cell == null ? "" : quoted(String(cell)))).join(",")
-
-/** Rows as CSV; numbers in their shortest exact form, an empty cell is a missing value. @see RFC 4180 */
-const csv = (header: readonly string[], rows: readonly (readonly Cell[])[]) =>
-  [header, ...rows].map((cells) => `${line(cells)}\r\n`).join("")
-
-const rowsOf = ({ columns }: DrawnSeries): Cell[][] =>
+const rowsOf = ({ columns }: DrawnSeries): CsvCell[][] =>
   (columns[0]?.values ?? []).map((_, row) => columns.map(({ values }) => values[row]))
 const namesOf = ({ columns }: DrawnSeries) => columns.map(({ name }) => name)
 

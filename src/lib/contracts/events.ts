@@ -27,15 +27,27 @@ export const listHistory = defineContract({
   answer: z.object({ items: z.array(eventAnswer), next: z.int().nullable() }),
 })
 
+export const exportHistory = defineContract({
+  id: "exportHistory",
+  method: "GET",
+  path: "/api/v1/manuscripts/{manuscriptId}/history.csv",
+  summary: "The whole history as CSV, oldest first.",
+  access: { who: "member", action: "history.read" },
+  params: manuscriptParams,
+  status: 200,
+  answer: "text/csv",
+})
+
 export const followEvents = defineContract({
   id: "followEvents",
   method: "GET",
   path: "/api/v1/manuscripts/{manuscriptId}/events",
-  summary: "What happens in a manuscript as it happens, as server-sent events.",
+  summary:
+    "What happens in a manuscript as it happens, as server-sent events; with Last-Event-ID what came after that one first.",
   access: { who: "member", action: "manuscript.read" },
   params: manuscriptParams,
   status: 200,
   answer: "text/event-stream",
 })
 
-export const eventContracts = [listHistory, followEvents] as const
+export const eventContracts = [listHistory, exportHistory, followEvents] as const

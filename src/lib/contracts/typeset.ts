@@ -8,7 +8,7 @@ export const typesetMath = defineContract({
   method: "POST",
   path: "/api/v1/typeset",
   summary: "Set formulas as paths: size in em, baseline at 0, and the body of an SVG.",
-  access: { who: "public" },
+  access: { who: "signed-in", scope: "read" },
   body: z.object({ tex: z.array(z.string().max(500)).max(100) }).strict(),
   status: 200,
   answer: z.object({

@@ -1,92 +1,116 @@
-import type { PoolClient } from "pg"
+import type { Actor } from "@/lib/server/auth/actor"
+import { isActorLive } from "@/lib/server/auth/is-actor-live"
+import { getDb } from "@/lib/server/db/client"
 import { findMembership } from "@/lib/server/db/memberships"
-import { getDb, getPool } from "@/lib/server/db/client"
-
-export interface LiveEvent {
-  readonly id?: number
-  readonly manuscriptId: string | null
-  readonly personId?: string | null
-  readonly kind: string
-  readonly subject: string | null
-}
-type Listener = (event: LiveEvent) => void
-
-const channels = ["afterquench_event", "afterquench_progress"] as const
-const listeners = new Set<Listener>()
-let connection: Promise<PoolClient> | undefined
-
-/** One connection of the process listens for all streams; it is opened again after it broke. */
-function listen(): Promise<PoolClient> {
-  connection ??= (async () => {
-    const client = await getPool().connect()
-    client.on("notification", ({ payload }) => {
-      const event = JSON.parse(payload ?? "{}") as LiveEvent
-      for (const listener of listeners) listener(event)
-    })
-    client.on("error", () => {
-      connection = undefined
-      client.release(true)
-      if (listeners.size > 0) void listen()
-    })
-    for (const channel of channels) await client.query(`listen ${channel}`)
-    return client
-  })()
-  connection.catch(() => {
-    connection = undefined
-  })
-  return connection
-}
+import { follow, type LiveEvent } from "./event-hub"
 
 const heartbeatMs = 20_000
+/** Lines of the history that a stream catches up on; whoever missed more loads the page again. */
+const mostMissed = 200
 
-/** Whether an event can take a member's access away. */
-const changesAccess = (kind: string) => kind.startsWith("member.")
+/** Pieces that a slow reader may leave lying. */
+const mostUnread = 1000
+
+/** Events after one that the reader has seen, oldest first; null when there are too many. */
+async function missedSince(manuscriptId: string, lastId: number): Promise<LiveEvent[] | null> {
+  const events = await getDb()
+    .selectFrom("event")
+    .select(["id", "manuscriptId", "personId", "kind", "subject"])
+    .where("manuscriptId", "=", manuscriptId)
+    .where("id", ">", lastId)
+    .orderBy("id")
+    .limit(mostMissed + 1)
+    .execute()
+  return events.length > mostMissed ? null : events
+}
+
+/** Whether somebody may still follow a manuscript: signed in, the token alive, a member. */
+async function mayFollow(actor: Actor, manuscriptId: string): Promise<boolean> {
+  const db = getDb()
+  if (!(await isActorLive(db, actor))) return false
+  return (await findMembership(db, manuscriptId, actor.person.id)) !== undefined
+}
+
+function block({ id, kind, subject, manuscriptId: _, ...rest }: LiveEvent): string {
+  const data = JSON.stringify({ kind, subject, ...rest })
+  return `${id === undefined ? "" : `id: ${id}\n`}event: change\ndata: ${data}\n\n`
+}
+
+/** Tells the reader that something was missed, without saying what. */
+const gap = block({ kind: "stream.gap", subject: null, manuscriptId: null })
 
 /**
  * Server-sent events of one manuscript for one of its members. Ends when the reader goes, when the server stops, and as
- * soon as the membership ends.
+ * soon as the membership, the sign-in or the token ends.
  *
+ * @param lastId of the last event the reader has seen, to begin after it; null to begin now
  * @see WHATWG HTML, server-sent events
  */
 export async function eventStream(
   manuscriptId: string,
-  personId: string,
+  actor: Actor,
+  lastId: number | null,
   signal: AbortSignal,
 ): Promise<ReadableStream<Uint8Array>> {
-  await listen()
   const encoder = new TextEncoder()
-  let end = () => {}
-  return new ReadableStream<Uint8Array>({
-    start(controller) {
-      const write = (text: string) => controller.enqueue(encoder.encode(text))
-      const onEvent = (event: LiveEvent) => {
-        if (event.manuscriptId !== manuscriptId) return
-        if (changesAccess(event.kind)) {
-          void findMembership(getDb(), manuscriptId, personId).then((membership) => {
-            if (membership === undefined) end()
-          }, end)
-        }
-        const { id, kind, subject, ...rest } = event
-        write(
-          `${id === undefined ? "" : `id: ${id}\n`}event: change\ndata: ${JSON.stringify({ kind, subject, ...rest })}\n\n`,
-        )
-      }
-      const heartbeat = setInterval(() => write(": still here\n\n"), heartbeatMs)
-      let ended = false
-      end = () => {
-        if (ended) return
-        ended = true
-        clearInterval(heartbeat)
-        listeners.delete(onEvent)
-        process.off("afterquench:stop" as never, end as never)
-        signal.removeEventListener("abort", end)
-        controller.close()
-      }
-      listeners.add(onEvent)
-      process.on("afterquench:stop" as never, end as never)
-      signal.addEventListener("abort", end)
-      write("retry: 2000\n\n")
+  let controller: ReadableStreamDefaultController<Uint8Array> | undefined
+  let stopFollowing: () => void = () => {}
+  let ended = false
+  const write = (text: string) => {
+    if (ended || !controller) return
+    controller.enqueue(encoder.encode(text))
+    // A reader that takes nothing any more must not fill the memory.
+    if ((controller.desiredSize ?? 0) < -mostUnread) end()
+  }
+  const cleanUp = () => {
+    ended = true
+    clearInterval(heartbeat)
+    stopFollowing()
+    signal.removeEventListener("abort", end)
+  }
+  const end = () => {
+    if (ended) return
+    cleanUp()
+    controller?.close()
+  }
+  const endUnlessAllowed = () => {
+    mayFollow(actor, manuscriptId).then((allowed) => allowed || end(), end)
+  }
+  const heartbeat = setInterval(() => {
+    write(": still here\n\n")
+    endUnlessAllowed()
+  }, heartbeatMs)
+  /** What comes while the missed events are looked up waits, so that all stays in order. */
+  let waiting: LiveEvent[] | null = []
+  const onEvent = (event: LiveEvent) => {
+    const concernsReader = event.kind.startsWith("person.") && event.personId === actor.person.id
+    if (concernsReader || (event.kind.startsWith("member.") && event.manuscriptId === manuscriptId))
+      endUnlessAllowed()
+    if (event.manuscriptId !== manuscriptId) return
+    if (waiting) waiting.push(event)
+    else write(block(event))
+  }
+  const stream = new ReadableStream<Uint8Array>({
+    start: (opened) => {
+      controller = opened
     },
-    cancel: () => end(),
+    cancel: cleanUp,
   })
+  signal.addEventListener("abort", end)
+  try {
+    stopFollowing = await follow({ onEvent, onGap: () => write(gap), onStop: end })
+    // The reader may have gone while the connection was made.
+    if (ended) stopFollowing()
+    write("retry: 2000\n\n")
+    const missed = lastId === null ? [] : await missedSince(manuscriptId, lastId)
+    for (const event of missed ?? []) write(block(event))
+    if (missed === null) write(gap)
+    const sent = missed?.at(-1)?.id ?? 0
+    for (const event of waiting) if (event.id === undefined || event.id > sent) write(block(event))
+    waiting = null
+  } catch (error) {
+    end()
+    throw error
+  }
+  return stream
 }
