@@ -80,7 +80,7 @@ describe("annotations", () => {
       baseline: "top",
     }
     const legendAt = (annotations: readonly Annotation[]) =>
-      insideShapes(drawing(annotations), frame, [], measure, { legend: true, taken: [] }).find(
+      insideShapes(drawing(annotations), frame, [], measure, { legend: true, taken: [] }).shapes.find(
         (shape) => shape.type === "text" && shape.text === "a",
       )
     const free = legendAt([])

@@ -93,6 +93,8 @@ export interface FrameLabel {
   readonly text: string
   readonly color: string
   readonly small?: boolean
+  /** Left out where it would cover data or leave the frame: it says what the caption says too. */
+  readonly optional?: boolean
   readonly places: readonly TextPlace[]
 }
 
@@ -122,6 +124,8 @@ export interface PanelDrawing {
   readonly legend: Legend
   readonly labels: readonly FrameLabel[]
   readonly colorBar: ColorBarDrawing | null
+  /** Whether an image fills the frame, on which letters need paper of their own. */
+  readonly filled?: boolean
   /** What the author put into the panel by hand; drawPanel takes it from the spec, kinds leave it out. */
   readonly annotations?: readonly Annotation[]
   /** What the reader of the caption must be told about the drawing: "Error bars at 24 of 200 times." */

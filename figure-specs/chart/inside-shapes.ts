@@ -20,11 +20,19 @@ function shapeInk(shape: Shape, measure: MeasureLabel): Ink {
   return boxInk(boundsOf(textCorners(shape, measure(shape.text, shape.bold))))
 }
 
-/** A label at the first of its places that covers the least ink and stays inside the frame. */
-function placeLabel(label: FrameLabel, ink: Ink, { widthPt, heightPt, look }: Frame, measure: MeasureLabel) {
+/** How far a box must move to lie inside a frame. */
+function inwards({ left, top, right, bottom }: Box, { widthPt, heightPt }: Frame) {
+  const along = (low: number, high: number, length: number) =>
+    low < 1 ? 1 - low : high > length - 1 ? length - 1 - high : 0
+  return { dx: along(left, right, widthPt), dy: along(top, bottom, heightPt) }
+}
+
+/** A label at the first of its places that covers the least ink; where none is inside the frame it is moved there. */
+function placeLabel(label: FrameLabel, ink: Ink, frame: Frame, measure: MeasureLabel): TextShape | null {
+  const { look } = frame
+  const fontPt = label.small ? look.smallPt : look.fontPt
   let best: { text: TextShape; box: Box; cost: number } | undefined
   for (const place of label.places) {
-    const fontPt = label.small ? look.smallPt : look.fontPt
     const text: TextShape = {
       type: "text",
       ...place,
@@ -35,11 +43,19 @@ function placeLabel(label: FrameLabel, ink: Ink, { widthPt, heightPt, look }: Fr
     }
     const corners = textCorners(text, measure(label.text, false))
     const box = boundsOf(corners)
-    const outside = box.left < 1 || box.top < 1 || box.right > widthPt - 1 || box.bottom > heightPt - 1
-    const cost = inkInside(ink, corners) + (outside ? 1000 : 0)
+    const { dx, dy } = inwards(box, frame)
+    const cost = inkInside(ink, corners) + 1000 * Number(dx !== 0 || dy !== 0)
     if (!best || cost < best.cost) best = { text, box, cost }
   }
-  return best
+  if (!best || (label.optional && best.cost > 3)) return null
+  const { dx, dy } = inwards(best.box, frame)
+  return { ...best.text, x: best.text.x + dx, y: best.text.y + dy }
+}
+
+export interface InsideShapes {
+  readonly shapes: readonly Shape[]
+  /** Whether the frame had no place for the legend that is free of data. */
+  readonly legendCoversData: boolean
 }
 
 /**
@@ -55,18 +71,23 @@ export function insideShapes(
   ink: Ink,
   measure: MeasureLabel,
   { legend: withLegend, taken: boxes }: { readonly legend: boolean; readonly taken: readonly Box[] },
-): readonly Shape[] {
+): InsideShapes {
   const shapes: Shape[] = [...annotationShapes(drawing.annotations ?? [], drawing, frame).over]
   const taken = [...ink, ...boxes.flatMap(boxInk), ...shapes.flatMap((shape) => shapeInk(shape, measure))]
   for (const label of drawing.labels) {
-    const placed = placeLabel(label, taken, frame, measure)
-    if (!placed) continue
-    shapes.push(placed.text)
-    taken.push(...boxInk(placed.box))
+    const text = placeLabel(label, taken, frame, measure)
+    if (!text) continue
+    shapes.push(text)
+    taken.push(...shapeInk(text, measure))
   }
-  if (!withLegend || drawing.legend.entries.length === 0) return shapes
-  const legend = legendShapes(drawing.legend, frame.look, measure)
-  const inset = frame.look.tickLengthPt + 0.35 * frame.look.smallPt
-  const place = freePlace(taken, frame, legend, inset)
-  return [...shapes, ...legendShapes(drawing.legend, frame.look, measure, place).shapes]
+  if (!withLegend || drawing.legend.entries.length === 0) return { shapes, legendCoversData: false }
+  const { look } = frame
+  const place = freePlace(
+    taken,
+    frame,
+    legendShapes(drawing.legend, look, measure),
+    look.tickLengthPt + 0.35 * look.smallPt,
+  )
+  shapes.push(...legendShapes(drawing.legend, look, measure, place).shapes)
+  return { shapes, legendCoversData: place.covered > 0 }
 }

@@ -68,7 +68,7 @@ function fitLabel(
       align: (side === "below") === falling ? ("right" as const) : ("left" as const),
     })),
   )
-  return [{ text, color: fitColor, small: true, places }]
+  return [{ text, color: fitColor, small: true, optional: true, places }]
 }
 
 function legendOf(result: DecayResult, { look }: Frame, drawn: readonly DrawnCurve[]): Legend {

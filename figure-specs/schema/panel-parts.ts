@@ -13,16 +13,6 @@ export const quantityName = z
   .string()
   .regex(/^[A-Za-z]{1,40}$/, "A quantity's name is letters only, so that it can be a TeX macro.")
 
-/** Place of a panel in the figure's grid, counted from 1. */
-export const place = z
-  .object({
-    row: z.int().min(1).max(12),
-    column: z.int().min(1).max(12),
-    rowSpan: z.int().min(1).max(12).default(1),
-    columnSpan: z.int().min(1).max(12).default(1),
-  })
-  .strict()
-
 const axis = z
   .object({
     label: label.optional(),

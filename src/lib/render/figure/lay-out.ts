@@ -1,5 +1,5 @@
 import type { Frame, Look, PanelDrawing } from "@specs/chart/drawing"
-import { firstMargins, mostRounds, sameMargins } from "@specs/chart/fit-frame"
+import { firstMargins, fitFrame, mostRounds, sameMargins } from "@specs/chart/fit-frame"
 import type { MeasureLabel, TextShape } from "@specs/chart/shape"
 import { marginsOf, surroundingTexts, type Margins } from "@specs/chart/surroundings"
 import { drawPanel } from "@specs/draw-panel"
@@ -10,7 +10,8 @@ import type { PanelParams } from "@specs/registry"
 import { SpecError } from "@specs/spec-error"
 import { gridFrames, type FrameRect } from "./grid-frames"
 import { pointsPerMm } from "./outer-svg"
-import { withoutRepeatedLabels, withSharedDomains } from "./shared-axes"
+import { isGridPanel, isInset, type GridPanel, type InsetPanel, type Panel } from "./panel-places"
+import { withoutRepeatedBars, withoutRepeatedLabels, withSharedDomains } from "./shared-axes"
 
 /** Free space at the rim of the page. */
 const edge = 1.5
@@ -19,13 +20,22 @@ const leastFramePt = 24
 
 /** A panel in its final place. */
 export interface LaidPanel {
+  /** Its place in the spec's list. */
+  readonly index: number
   readonly drawing: PanelDrawing
+  /** Its frame on the page. */
   readonly rect: FrameRect
   readonly frame: Frame
   readonly texts: readonly TextShape[]
 }
 
-interface Setting {
+export interface LaidInset extends LaidPanel {
+  readonly host: number
+  /** All that the inset takes of the page, with its numbers and titles. */
+  readonly outer: FrameRect
+}
+
+export interface Setting {
   readonly spec: FigureSpec
   readonly results: readonly PanelResult[]
   /** Look of each panel. */
@@ -34,18 +44,27 @@ interface Setting {
   readonly measure: MeasureLabel
 }
 
-/** Draws all panels for given frames; kinds choose ticks by the room that they have. */
-function drawAll({ spec, results, kindOf }: Setting, frames: readonly Frame[]): readonly PanelDrawing[] {
-  const draw = (panels: FigureSpec["panels"]) =>
-    panels.map((panel, index) => {
-      const result = results[index]
-      if (!result) throw new Error(`Panel ${index + 1} has no result.`)
-      return drawPanel(panel, result, frames[index]!, kindOf(panel.kind))
-    })
-  const alone = draw(spec.panels)
-  if (!spec.grid.shareX && !spec.grid.shareY) return alone
-  const together = draw([...withSharedDomains(spec.panels, alone, spec.grid)])
-  return together.map((drawing, index) => withoutRepeatedLabels(drawing, spec.panels, index, spec.grid))
+function draw({ results, kindOf }: Setting, panel: Panel, index: number, frame: Frame): PanelDrawing {
+  const result = results[index]
+  if (!result) throw new Error(`Panel ${index + 1} has no result.`)
+  return drawPanel(panel, result, frame, kindOf(panel.kind))
+}
+
+interface Numbered {
+  readonly panel: GridPanel
+  readonly index: number
+}
+
+/** Draws the panels of the grid for given frames; kinds choose ticks by the room that they have. */
+function drawGrid(setting: Setting, numbered: readonly Numbered[], frames: readonly Frame[]) {
+  const { grid } = setting.spec
+  const panels = numbered.map(({ panel }) => panel)
+  const drawAll = (all: readonly GridPanel[]) =>
+    all.map((panel, k) => draw(setting, panel, numbered[k]!.index, frames[k]!))
+  const alone = drawAll(panels)
+  const together = grid.shareX || grid.shareY ? drawAll(withSharedDomains(panels, alone, grid)) : alone
+  const labelled = together.map((drawing, k) => withoutRepeatedLabels(drawing, panels, k, grid))
+  return withoutRepeatedBars(labelled, panels)
 }
 
 /** The title of a panel, centred above its frame, or above the numbers of its upper axis. */
@@ -69,12 +88,13 @@ function titleText(
   return [{ type: "text", text: title, ...place, fontPt, color: "#000000", bold: false }]
 }
 
-function checkRoom(rects: readonly FrameRect[]): void {
-  const small = rects.findIndex(({ width, height }) => width < leastFramePt || height < leastFramePt)
-  if (small < 0) return
-  const side = rects[small]!.width < leastFramePt ? "wide" : "high"
-  const message = `Panel ${small + 1} would be less than ${Math.round(leastFramePt / pointsPerMm)} mm ${side} beside its labels: make the figure larger or its labels shorter.`
-  throw new SpecError([{ pointer: "/size", code: "figure-too-small", message }])
+const hasRoom = ({ width, height }: FrameRect): boolean => width >= leastFramePt && height >= leastFramePt
+
+function tooSmall(pointer: string, rect: FrameRect, whole: string): SpecError {
+  const side = rect.width < leastFramePt ? "wide" : "high"
+  const least = Math.round(leastFramePt / pointsPerMm)
+  const message = `This leaves a plot less than ${least} mm ${side} beside its labels: make the ${whole} larger or its labels shorter.`
+  return new SpecError([{ pointer, code: "figure-too-small", message }])
 }
 
 /**
@@ -83,37 +103,87 @@ function checkRoom(rects: readonly FrameRect[]): void {
  *
  * @throws SpecError figure-too-small
  */
-export function layOut(setting: Setting): readonly LaidPanel[] {
+export function layOutGrid(setting: Setting): readonly LaidPanel[] {
   const { spec, looks, measure } = setting
+  const numbered = spec.panels.flatMap((panel, index) => (isGridPanel(panel) ? [{ panel, index }] : []))
   const page = { width: spec.size.widthMm * pointsPerMm, height: spec.size.heightMm * pointsPerMm }
   const gapPt = Math.max(...looks.map(({ fontPt }) => fontPt))
   const gaps = {
     columns: spec.grid.shareY ? 0.5 * gapPt : gapPt,
     rows: spec.grid.shareX ? 0.5 * gapPt : 0.8 * gapPt,
   }
-  let margins: readonly Margins[] = spec.panels.map(() => firstMargins)
+  let margins: readonly Margins[] = numbered.map(() => firstMargins)
   for (let round = 0; ; round += 1) {
-    const placed = spec.panels.map(({ place }, index) => ({ ...place, margins: margins[index]! }))
+    const placed = numbered.map(({ panel }, k) => ({ ...panel.place, margins: margins[k]! }))
     const rects = gridFrames(placed, spec.grid, page, { edge, gaps })
-    checkRoom(rects)
-    const frames = rects.map(({ width, height }, index): Frame => ({
+    const cramped = rects.find((rect) => !hasRoom(rect))
+    if (cramped) throw tooSmall("/size", cramped, "figure")
+    const frames = rects.map(({ width, height }, k): Frame => ({
       widthPt: width,
       heightPt: height,
-      look: looks[index]!,
+      look: looks[numbered[k]!.index]!,
     }))
-    const drawings = drawAll(setting, frames)
-    const texts = drawings.map((drawing, index) => {
-      const around = surroundingTexts(drawing, frames[index]!, measure)
-      return [...around, ...titleText(spec.panels[index]!.title, drawing, around, frames[index]!, measure)]
+    const drawings = drawGrid(setting, numbered, frames)
+    const texts = drawings.map((drawing, k) => {
+      const around = surroundingTexts(drawing, frames[k]!, measure)
+      return [...around, ...titleText(numbered[k]!.panel.title, drawing, around, frames[k]!, measure)]
     })
-    const needed = texts.map((around, index) => marginsOf(around, frames[index]!, measure))
-    if (needed.every((need, index) => sameMargins(need, margins[index]!)) || round === mostRounds)
-      return drawings.map((drawing, index) => ({
+    const needed = texts.map((around, k) => marginsOf(around, frames[k]!, measure))
+    if (needed.every((need, k) => sameMargins(need, margins[k]!)) || round === mostRounds)
+      return drawings.map((drawing, k) => ({
+        index: numbered[k]!.index,
         drawing,
-        rect: rects[index]!,
-        frame: frames[index]!,
-        texts: texts[index]!,
+        rect: rects[k]!,
+        frame: frames[k]!,
+        texts: texts[k]!,
       }))
     margins = needed
   }
+}
+
+/** An inset's look: type no smaller than the figure's numbers, all that is drawn a little finer. */
+function insetLook(look: Look): Look {
+  return {
+    ...look,
+    fontPt: look.smallPt,
+    markerSizePt: 0.8 * look.markerSizePt,
+    tickLengthPt: 0.7 * look.tickLengthPt,
+    minorTickLengthPt: 0.7 * look.minorTickLengthPt,
+    labelGapPt: 0.7 * look.labelGapPt,
+  }
+}
+
+function layOutInset(setting: Setting, panel: InsetPanel, index: number, host: FrameRect): LaidInset {
+  const { x, y, width, height, inside } = panel.place
+  const outer = {
+    x: host.x + x * host.width,
+    y: host.y + (1 - y - height) * host.height,
+    width: width * host.width,
+    height: height * host.height,
+  }
+  const look = insetLook(setting.looks[index]!)
+  const { drawing, frame, margins, texts } = fitFrame(
+    (wanted) => draw(setting, panel, index, wanted),
+    look,
+    outer,
+    setting.measure,
+    0,
+  )
+  const rect = {
+    x: outer.x + margins.left,
+    y: outer.y + margins.top,
+    width: outer.width - margins.left - margins.right,
+    height: outer.height - margins.top - margins.bottom,
+  }
+  if (!hasRoom(rect)) throw tooSmall(`/panels/${index}/place`, rect, "inset")
+  return { index, host: inside - 1, drawing, rect, outer, frame, texts }
+}
+
+/** Lays the insets of a figure into the frames of their panels. @throws SpecError figure-too-small */
+export function layOutInsets(setting: Setting, grid: readonly LaidPanel[]): readonly LaidInset[] {
+  return setting.spec.panels.flatMap((panel, index) => {
+    if (!isInset(panel)) return []
+    const host = grid.find((laid) => laid.index === panel.place.inside - 1)!
+    return [layOutInset(setting, panel, index, host.rect)]
+  })
 }

@@ -8,16 +8,16 @@ import {
   type TextShape,
 } from "@specs/chart/shape"
 import type { Frame, Look } from "@specs/chart/drawing"
-import type { FigureSpec } from "@specs/figure-spec"
+import { isGridPanel, type Panel } from "./panel-places"
 
 /** The letter of each panel as it is written, in reading order of the grid; empty for none. A lone panel has none. */
-export function panelLetters(panels: FigureSpec["panels"], look: Look): readonly string[] {
+export function panelLetters(panels: readonly Panel[], look: Look): readonly string[] {
   const reading = panels
-    .map(({ place }, index) => ({ index, order: place.row * 100 + place.column }))
-    .sort((a, b) => a.order - b.order)
-  const rank = new Map(reading.map(({ index }, position) => [index, position]))
-  return panels.map(({ letter }, index) => {
-    const own = letter ?? (panels.length > 1 ? String.fromCharCode(97 + rank.get(index)!) : "")
+    .filter(isGridPanel)
+    .sort((a, b) => a.place.row - b.place.row || a.place.column - b.place.column)
+  return panels.map((panel) => {
+    if (!isGridPanel(panel)) return ""
+    const own = panel.letter ?? (reading.length > 1 ? String.fromCharCode(97 + reading.indexOf(panel)) : "")
     if (own === "" || /[^A-Za-z]/.test(own)) return own
     return look.letter.style === "(a)" ? `(${own})` : look.letter.style === "A" ? own.toUpperCase() : own
   })

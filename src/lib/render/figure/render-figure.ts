@@ -1,23 +1,19 @@
-import { frameShapes } from "@specs/chart/surroundings"
-import { annotationShapes } from "@specs/chart/annotation-shapes"
 import type { Legend, Look } from "@specs/chart/drawing"
-import { insideShapes } from "@specs/chart/inside-shapes"
 import { defaultLook } from "@specs/chart/look"
 import { patchLook, readLookPatch, type LookPatch } from "@specs/chart/look-patch"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
-import { kindOf as kindByName, type AnyKind } from "@specs/kinds"
-import type { PanelParams } from "@specs/registry"
-import { SpecError } from "@specs/spec-error"
+import { kindOf as kindByName } from "@specs/kinds"
+import { SpecError, type SpecIssue } from "@specs/spec-error"
 import { drawMarks, type DrawnMarks } from "../panel/draw-marks"
 import { fontRules } from "../svg/embed-fonts"
 import { typesetterFor } from "../typeset/typesetter"
 import { checkLabels } from "./check-labels"
-import { checkPlaces } from "./check-places"
-import { layOut } from "./lay-out"
+import { layOutGrid, layOutInsets, type Setting } from "./lay-out"
 import { outerSvg } from "./outer-svg"
-import { letterShapes, panelLetters } from "./panel-letters"
-import { movedSvg, shapesSvg } from "./shape-svg"
+import { figureBody } from "./figure-body"
+import { panelLetters } from "./panel-letters"
+import { checkPlaces } from "./panel-places"
 
 /** A figure at its printed size. */
 export interface RenderedFigure {
@@ -27,7 +23,9 @@ export interface RenderedFigure {
   readonly alternativeText: string
   /** What the caption must say about the drawing, one sentence each. */
   readonly notes: readonly string[]
-  /** The legend of each panel, for checks of what tells its series apart. */
+  /** What was drawn but should be looked at, each with its place in the spec. */
+  readonly warnings: readonly SpecIssue[]
+  /** The legend of each panel in the order of the spec, for checks of what tells its series apart. */
   readonly legends: readonly Legend[]
 }
 
@@ -35,7 +33,7 @@ export interface RenderOptions {
   /** Changes to the default look, such as a manuscript's house look. */
   readonly look?: LookPatch
   /** Where kinds come from; the registered ones unless a kind is being tried out. */
-  readonly kindOf?: (kind: PanelParams["kind"]) => Pick<AnyKind, "build">
+  readonly kindOf?: Setting["kindOf"]
 }
 
 /** The look of each panel: the figure's, changed by the panel's own style. The face is the figure's: one paper, one face. */
@@ -44,12 +42,6 @@ function panelLooks(spec: FigureSpec, look: Look): readonly Look[] {
   const issues = read.flatMap((one) => one.issues)
   if (issues.length > 0) throw new SpecError(issues)
   return read.map(({ patch }) => ({ ...patchLook(look, patch), fontFamily: look.fontFamily }))
-}
-
-/** Whether a legend says what one before it already said. */
-function repeated(legends: readonly { readonly entries: readonly unknown[] }[], index: number): boolean {
-  const own = JSON.stringify(legends[index])
-  return legends.slice(0, index).some((legend) => JSON.stringify(legend) === own)
 }
 
 /**
@@ -67,52 +59,39 @@ export async function renderFigure(
 ): Promise<RenderedFigure> {
   const look = patchLook(defaultLook, changes)
   const typesetter = await typesetterFor(look.fontFamily)
-  const { measure } = typesetter
   checkPlaces(spec)
   checkLabels(spec, typesetter)
-  const panels = layOut({ spec, results, looks: panelLooks(spec, look), kindOf, measure })
+  const setting = { spec, results, looks: panelLooks(spec, look), kindOf, measure: typesetter.measure }
+  const grid = layOutGrid(setting)
+  const insets = layOutInsets(setting, grid)
+  const inOrder = [...grid, ...insets].sort((a, b) => a.index - b.index)
   const marks: DrawnMarks[] = []
-  for (const [index, { drawing }] of panels.entries())
-    marks.push(await drawMarks(drawing.spec, `panel-${index + 1}-`))
+  for (const { drawing, index } of inOrder) marks.push(await drawMarks(drawing.spec, `panel-${index + 1}-`))
   const letters = panelLetters(spec.panels, look)
-  const lettered = letterShapes(
-    panels.map(({ drawing, frame }, index) => ({
-      letter: letters[index]!,
-      frame,
-      ink: marks[index]!.ink,
-      filled: drawing.colorBar !== null,
-    })),
-    measure,
-  )
-  const legends = panels.map(({ drawing }) => drawing.legend)
-  const body = panels
-    .map(({ drawing, rect, frame, texts }, index) => {
-      const { svg, ink } = marks[index]!
-      const letter = lettered[index]!
-      const inside = insideShapes(drawing, frame, ink, measure, {
-        legend: !repeated(legends, index),
-        taken: letter.box ? [letter.box] : [],
-      })
-      const { under } = annotationShapes(drawing.annotations ?? [], drawing, frame)
-      const shapes = [...frameShapes(drawing, frame), ...texts, ...letter.shapes, ...inside]
-      return movedSvg(rect.x, rect.y, shapesSvg(under, typesetter) + svg + shapesSvg(shapes, typesetter))
-    })
-    .join("")
-  const described = panels.map(({ drawing }, index) =>
-    letters[index] ? `${letters[index]} ${drawing.alternativeText}` : drawing.alternativeText,
-  )
-  const alternativeText = described.join(" ")
+  const { svg: body, warnings } = figureBody({ grid, insets, marks, letters, typesetter })
+  const named = inOrder.map(({ index }) => {
+    const inset = insets.find((one) => one.index === index)
+    return [letters[inset ? inset.host : index], inset ? "Inset:" : ""].filter(Boolean).join(" ")
+  })
+  const prefixed = (index: number, text: string) => (named[index] ? `${named[index]} ${text}` : text)
+  const alternativeText = inOrder
+    .map(({ drawing }, index) => prefixed(index, drawing.alternativeText))
+    .join(" ")
   const { widthMm, heightMm } = spec.size
-  const svg = outerSvg({
+  return {
+    svg: outerSvg({
+      widthMm,
+      heightMm,
+      title: spec.title || "Figure",
+      description: alternativeText,
+      body,
+      style: await fontRules(body),
+    }),
     widthMm,
     heightMm,
-    title: spec.title || "Figure",
-    description: alternativeText,
-    body,
-    style: await fontRules(body),
-  })
-  const notes = panels.flatMap(({ drawing }, index) =>
-    drawing.notes.map((note) => (letters[index] ? `${letters[index]} ${note}` : note)),
-  )
-  return { svg, widthMm, heightMm, alternativeText, notes, legends }
+    alternativeText,
+    notes: inOrder.flatMap(({ drawing }, index) => drawing.notes.map((note) => prefixed(index, note))),
+    warnings,
+    legends: inOrder.map(({ drawing }) => drawing.legend),
+  }
 }

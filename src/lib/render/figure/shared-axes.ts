@@ -1,14 +1,13 @@
 import type { AxisDrawing, PanelDrawing } from "@specs/chart/drawing"
 import type { FigureSpec } from "@specs/figure-spec"
-
-type Panel = FigureSpec["panels"][number]
+import type { GridPanel } from "./panel-places"
 
 /** The columns of the grid that a panel covers, or its rows: panels that cover the same ones have frames in line. */
-const tracks = ({ place }: Panel, axis: "x" | "y"): string =>
+const tracks = ({ place }: GridPanel, axis: "x" | "y"): string =>
   axis === "x" ? `${place.column}+${place.columnSpan}` : `${place.row}+${place.rowSpan}`
 
 /** Panels that share an axis with one: the same frame edges, so that a value stands at the same place in all. */
-const inLine = (panels: readonly Panel[], axis: "x" | "y", index: number): readonly number[] =>
+const inLine = (panels: readonly GridPanel[], axis: "x" | "y", index: number): readonly number[] =>
   panels.flatMap((panel, other) => (tracks(panel, axis) === tracks(panels[index]!, axis) ? [other] : []))
 
 /**
@@ -17,10 +16,10 @@ const inLine = (panels: readonly Panel[], axis: "x" | "y", index: number): reado
  * @param drawings the panels drawn with their own domains
  */
 export function withSharedDomains(
-  panels: readonly Panel[],
+  panels: readonly GridPanel[],
   drawings: readonly PanelDrawing[],
   grid: FigureSpec["grid"],
-): readonly Panel[] {
+): readonly GridPanel[] {
   const shared = (axis: "x" | "y", index: number): [number, number] | undefined => {
     if (!(axis === "x" ? grid.shareX : grid.shareY)) return panels[index]!.axes[axis].domain
     const domains = inLine(panels, axis, index).map((other) => drawings[other]!.axes[axis].domain)
@@ -44,7 +43,7 @@ const bare = (axis: AxisDrawing): AxisDrawing => ({
 /** A drawing without the numbers and titles that the panel at the foot of its column, or the head of its row, carries. */
 export function withoutRepeatedLabels(
   drawing: PanelDrawing,
-  panels: readonly Panel[],
+  panels: readonly GridPanel[],
   index: number,
   grid: FigureSpec["grid"],
 ): PanelDrawing {
@@ -59,4 +58,18 @@ export function withoutRepeatedLabels(
       y: grid.shareY && !head ? bare(drawing.axes.y) : drawing.axes.y,
     },
   }
+}
+
+/** Drawings in which a colour bar that several panels of a row have in common stands beside the last of them only. */
+export function withoutRepeatedBars(
+  drawings: readonly PanelDrawing[],
+  panels: readonly GridPanel[],
+): readonly PanelDrawing[] {
+  const bars = drawings.map(({ colorBar }) => (colorBar ? JSON.stringify(colorBar) : null))
+  return drawings.map((drawing, index) => {
+    const repeated = inLine(panels, "y", index).some(
+      (other) => bars[other] === bars[index] && panels[other]!.place.column > panels[index]!.place.column,
+    )
+    return repeated ? { ...drawing, colorBar: null } : drawing
+  })
 }
