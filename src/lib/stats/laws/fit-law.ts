@@ -32,6 +32,9 @@ export interface LawFit {
   readonly parameters: Float64Array
   /** R x p; a row of NaN where a replicate could not be fitted. */
   readonly replicates: Float64Array
+  /** Weighted sum of squares of the whole sample, weights near 1, and of each replicate; NaN where there is no fit. */
+  readonly sumOfSquares: number
+  readonly replicateSums: Float64Array
   /** Replicates whose fit ran to the end of its range. */
   readonly replicatesAtBound: number
   /** The law at the points used. */
@@ -92,6 +95,7 @@ export function fitLaw(
     from,
     to,
     parameters,
+    sumOfSquares: search.sumOfSquares,
     ...refits,
     ...summary,
     degreesOfFreedom: n - p,
@@ -189,6 +193,7 @@ function refitReplicates(
 ) {
   const p = law.parameters.length
   const replicates = new Float64Array(count * p).fill(Number.NaN)
+  const replicateSums = new Float64Array(count).fill(Number.NaN)
   let replicatesAtBound = 0
   for (let r = 0; r < count; r += 1) {
     if (!row.read(r + 1)) continue
@@ -206,9 +211,11 @@ function refitReplicates(
     if (fit.atBound.length > 0) replicatesAtBound += 1
     problem.residuals(fit.parameters, new Float64Array(t.length))
     const parameters = scaled.assemble(fit.parameters, problem.coefficients())
-    if (isReached(law, parameters)) replicates.set(parameters, r * p)
+    if (!isReached(law, parameters)) continue
+    replicates.set(parameters, r * p)
+    replicateSums[r] = fit.sumOfSquares
   }
-  return { replicates, replicatesAtBound }
+  return { replicates, replicateSums, replicatesAtBound }
 }
 
 function residualsOf(
