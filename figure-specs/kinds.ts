@@ -1,9 +1,13 @@
 import { decayExponent } from "./decay-exponent"
+import { ensembleTrace } from "./ensemble-trace"
 import type { FigureKind, PanelResult } from "./figure-kind"
 import type { PanelParams } from "./registry"
 
 /** Every kind with all that it can do; registry.ts holds their parameters alone, which is all that a schema needs. */
-const kinds = { "decay-exponent": decayExponent }
+const kinds = {
+  "decay-exponent": decayExponent,
+  "ensemble-trace": ensembleTrace,
+} satisfies Record<PanelParams["kind"], object>
 
 export type KindName = keyof typeof kinds
 

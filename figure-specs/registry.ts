@@ -1,6 +1,7 @@
 import { z } from "zod"
 import { decayExponentParams } from "./decay-exponent/params"
+import { ensembleTraceParams } from "./ensemble-trace/params"
 
 /** Every kind's parameters, told apart by `kind`. */
-export const panelParams = z.discriminatedUnion("kind", [decayExponentParams])
+export const panelParams = z.discriminatedUnion("kind", [decayExponentParams, ensembleTraceParams])
 export type PanelParams = z.infer<typeof panelParams>

@@ -36,13 +36,14 @@ export function drawRules(
   })
   const lines = rules.flatMap((rule) => (rule.to === undefined ? [{ path: across(rule, place(rule)) }] : []))
   const gap = 0.3 * look.smallPt
+  const fromFrame = look.tickLengthPt + gap
   const labels = rules.flatMap((rule): FrameLabel[] => {
     if (rule.label === null) return []
     const p = rule.to === undefined ? place(rule) : (place(rule) + place(rule, rule.to)) / 2
     const beside = (share: number, side: -1 | 1): TextPlace =>
       rule.axis === "y"
         ? {
-            x: share * widthPt + (share < 0.5 ? gap : share > 0.5 ? -gap : 0),
+            x: Math.min(Math.max(share * widthPt, fromFrame), widthPt - fromFrame),
             y: p + side * gap,
             align: share < 0.5 ? "left" : share > 0.5 ? "right" : "center",
             baseline: side < 0 ? "bottom" : "top",

@@ -1,8 +1,6 @@
 import type { DataTable } from "../figure-kind"
+import { distinctValues, proposedColumns, proposedCurveBy } from "../proposal"
 import { decayExponentParams, type DecayExponentParams } from "./params"
-
-/** Distinct values up to which a parameter column splits into curves unasked. */
-const fewValues = 8
 
 /**
  * A decay panel to start from: columns by their roles, one curve per value of the first parameter that takes a few
@@ -13,24 +11,11 @@ export function proposeDecay(
   table: DataTable,
   roles: ReadonlyMap<string, string>,
 ): DecayExponentParams {
-  const named = (role: string) => table.columns.find((column) => roles.get(column.name) === role)?.name
-  const distinct = (name: string) =>
-    new Set<number | string>(table.columns.find((column) => column.name === name)?.values ?? []).size
-  const parameters = table.columns
-    .filter((column) => roles.get(column.name) === "parameter")
-    .map((c) => c.name)
-  const curveBy = parameters.find((name) => distinct(name) > 1 && distinct(name) <= fewValues) ?? null
-  const time = table.columns.find((column) => column.name === named("time"))
-  const last = time?.values instanceof Float64Array ? time.values.reduce((a, b) => (b > a ? b : a), 0) : 0
-  const columns = Object.fromEntries(
-    (["trajectory", "time", "observable", "uncertainty", "weight"] as const).flatMap((role) => {
-      const name = named(role)
-      return name === undefined ? [] : [[role, name]]
-    }),
-  )
+  const columns = proposedColumns(table, roles, ["trajectory", "time", "observable", "uncertainty", "weight"])
+  const last = columns.time === undefined ? 0 : Number(distinctValues(table, columns.time).at(-1))
   return decayExponentParams.parse({
     kind: "decay-exponent",
-    data: { dataset, columns, curveBy },
+    data: { dataset, columns, curveBy: proposedCurveBy(table, roles) },
     reduction: { bins: { perDecade: 12 } },
     fit: { window: last > 0 ? [Number((last / 10 ** 1.5).toPrecision(2)), null] : [null, null] },
   })

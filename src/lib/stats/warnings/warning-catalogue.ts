@@ -121,6 +121,11 @@ export const warningCatalogue = {
     sentence:
       "The points scatter more than their stated errors (chi-square per degree of freedom {ratio}); the error of the fit is optimistic.",
   },
+  NOT_SATURATED: {
+    severity: "caution",
+    sentence:
+      "The value changes by {change} standard errors between the halves of the window: it may not have saturated.",
+  },
   SMALL_CHANGE: {
     severity: "caution",
     sentence:
