@@ -8,6 +8,7 @@ import { When } from "@/components/parts/when"
 import { call, sentenceOf } from "@/lib/client/call"
 import { Island } from "@/lib/client/island"
 import { useLiveChanges } from "@/lib/client/live"
+import type { MathBox } from "@/lib/client/typeset"
 import {
   acceptDatasetVersion,
   changeDatasetVersion,
@@ -24,18 +25,19 @@ interface Props {
   readonly manuscriptId: string
   readonly version: DatasetVersionAnswer
   readonly mayAccept: boolean
+  readonly boxes: Readonly<Record<string, MathBox | null>>
 }
 
 /** How a file was read, before it is accepted: its lines, its columns, what needs a look. */
-export function IntakePage(props: Props) {
+export function IntakePage({ boxes, ...props }: Props) {
   return (
-    <Island>
+    <Island boxes={boxes}>
       <Intake {...props} />
     </Island>
   )
 }
 
-function Intake({ manuscriptId, version: initial, mayAccept }: Props) {
+function Intake({ manuscriptId, version: initial, mayAccept }: Omit<Props, "boxes">) {
   const params = { manuscriptId, datasetName: initial.datasetName, number: initial.number }
   const client = useQueryClient()
   const { data: version } = useQuery({
@@ -129,9 +131,11 @@ function Intake({ manuscriptId, version: initial, mayAccept }: Props) {
           </section>
         )}
         {version.state === "accepted" && mayAccept && (
-          <ButtonLink look="act" href={`/manuscripts/${manuscriptId}/figures/new`}>
-            Build a figure
-          </ButtonLink>
+          <div>
+            <ButtonLink look="act" href={`/manuscripts/${manuscriptId}/figures/new`}>
+              Build a figure
+            </ButtonLink>
+          </div>
         )}
         <p className="m-0">
           <a

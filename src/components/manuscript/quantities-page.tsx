@@ -82,7 +82,14 @@ export function QuantitiesPage({
               <p className="text-wrong-ink">{problem}</p>
             ) : (
               <>
-                <pre className="overflow-x-auto bg-sunk p-3 text-small leading-5">{valuesTex}</pre>
+                <pre
+                  // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex -- a scrolling region must be reachable by keyboard
+                  tabIndex={0}
+                  aria-label="values.tex"
+                  className="overflow-x-auto bg-sunk p-3 text-small leading-5"
+                >
+                  {valuesTex}
+                </pre>
                 <a
                   href={`data:application/x-tex;charset=utf-8,${encodeURIComponent(valuesTex)}`}
                   download="values.tex"

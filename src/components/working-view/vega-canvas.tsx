@@ -50,6 +50,8 @@ const options: EmbedOptions = {
   hover: false,
   tooltip: false,
   defaultStyle: false,
+  // The whole chart is one image with its own description; roles on every mark would only repeat it.
+  config: { aria: false } as NonNullable<EmbedOptions["config"]>,
 }
 
 /** Free space at the rim, in pixels. */
