@@ -131,6 +131,20 @@ export const warningCatalogue = {
     sentence:
       "The observable changes by less than a factor of 2 in the window: the exponent is a drift, not a law.",
   },
+  SERIES_TOO_SHORT: {
+    severity: "severe",
+    sentence: "The series spans only {times} autocorrelation times; below 50 its error is not to be trusted.",
+  },
+  NOT_STATIONARY: {
+    severity: "severe",
+    sentence:
+      "The first and the second half of the series differ by {shift} standard errors: it has no stationary mean.",
+  },
+  NONLINEAR_ERRORS: {
+    severity: "note",
+    sentence:
+      "Resampled errors differ by up to {percent} % from the analytic ones: the law is not linear within its errors.",
+  },
 } as const satisfies Record<string, Entry>
 
 export type WarningCode = keyof typeof warningCatalogue
