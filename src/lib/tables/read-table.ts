@@ -5,6 +5,7 @@ import { IntakeRefusal, sentence } from "./intake-codes"
 import { intakeLimits } from "./intake-limits"
 import { readNpy } from "./npy/read-npy"
 import { openRecipe } from "./open-recipe"
+import { readParquet } from "./parquet/read-parquet"
 import type { ReadContext, ReadOptions } from "./read-context"
 import type { RecipeInput } from "./reading-recipe"
 import type { ByteSource } from "./source/byte-source"
@@ -119,6 +120,7 @@ async function readPlain(
   if (format === "npy") return readNpy(stream, context)
   if (format === "text") return readText(stream, context)
   if (format === "hdf5") return readHdf5(source, context)
+  if (format === "parquet") return readParquet(source, context)
   throw new IntakeRefusal("unreadable-format", { format })
 }
 

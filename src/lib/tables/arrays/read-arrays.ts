@@ -38,9 +38,9 @@ export async function readArrays(listing: ArrayListing, context: ReadContext): P
   const failures = new Map<ArraySource, ArrayFailure>()
   for (;;) {
     const sources = listing.sources.filter((source) => !failures.has(source))
-    const failed = await readOnce({ ...listing, sources }, failures, context)
-    if (isReading(failed)) return failed
-    for (const [source, failure] of failed) failures.set(source, failure)
+    const result = await readOnce({ ...listing, sources }, failures, context)
+    if (isReading(result)) return result
+    for (const [source, failure] of result) failures.set(source, failure)
     context.onRestart?.()
   }
 }
@@ -61,6 +61,14 @@ async function readOnce(
     journal.problem(code, { name: source.place, ...values }, { line: source.place })
   const { sources, asked } = asTables(listing.sources, recipe, journal)
   checkSize(sources, context)
+  const count = sources.reduce((sum, { outputs }) => sum + outputs.length, 0)
+  if (recipe.columns && recipe.columns.length !== count) {
+    // The recipe may leave out what only reading shows to be unreadable: find out, without giving anything away.
+    const blind = { ...context, sink: null, recipe: { ...recipe, columns: null } }
+    const result = await readOnce(listing, before, blind)
+    if (isReading(result)) throw new IntakeRefusal("recipe-mismatch", { k: recipe.columns.length, n: count })
+    return result
+  }
   const watched = new Map<string, Float64Array>()
   const { outputs, writersOf } = makeOutputs(sources, asked, context, journal, watched)
   await sink?.start(describeColumns(outputs))
@@ -103,8 +111,6 @@ function makeOutputs(
 ) {
   const { recipe, sink } = context
   const count = sources.reduce((sum, { outputs }) => sum + outputs.length, 0)
-  if (recipe.columns && recipe.columns.length !== count)
-    throw new IntakeRefusal("recipe-mismatch", { k: recipe.columns.length, n: count })
   const given = sources.flatMap((source) => source.outputs.map(({ name }) => ({ name, place: source.place })))
   const names = uniqueNames(
     given.map(({ name }) => name),
