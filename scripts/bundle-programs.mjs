@@ -10,6 +10,7 @@ export const programs = {
   worker: "src/lib/server/jobs/worker.ts",
   migrate: "src/lib/server/db/migrate.ts",
   "read-table": "src/lib/server/jobs/read-table-process.ts",
+  "hdf5-child": "src/lib/tables/hdf5/hdf5-child.ts",
   "compute-figure": "src/lib/server/jobs/compute-figure-process.ts",
   "make-bundle": "src/lib/server/jobs/make-bundle-process.ts",
   local: "src/lib/server/local/local.ts",
