@@ -12,68 +12,67 @@ interface SceneItem {
   readonly y2?: number
   readonly defined?: boolean
   readonly path?: string
-  readonly bounds?: { readonly x1: number; readonly y1: number; readonly x2: number; readonly y2: number }
   readonly items?: readonly SceneMark[]
 }
 
-const spacing = 1.5
+const spacing = 2
 
-/** Points at most 1.5 pt apart from one point to another, the first left out. */
-function between(
-  from: readonly [number, number],
-  to: readonly [number, number],
-): (readonly [number, number])[] {
+type Point = readonly [number, number]
+
+/** Adds points at most 2 pt apart from one point to another, the first left out. */
+function addBetween(from: Point, to: Point, ink: Point[]): void {
   const steps = Math.max(1, Math.ceil(Math.hypot(to[0] - from[0], to[1] - from[1]) / spacing))
-  return Array.from({ length: steps }, (_, k) => {
-    const t = (k + 1) / steps
-    return [from[0] + t * (to[0] - from[0]), from[1] + t * (to[1] - from[1])] as const
-  })
+  for (let k = 1; k < steps; k += 1)
+    ink.push([from[0] + (k / steps) * (to[0] - from[0]), from[1] + (k / steps) * (to[1] - from[1])])
+  ink.push(to)
 }
 
-function polyline(points: readonly (readonly [number, number])[]): (readonly [number, number])[] {
-  return points.flatMap((point, k) => (k === 0 ? [point] : between(points[k - 1]!, point)))
+function addPolyline(points: readonly Point[], ink: Point[]): void {
+  points.forEach((point, k) => (k === 0 ? void ink.push(point) : addBetween(points[k - 1]!, point, ink)))
 }
 
 /** Ink along the M, L, H and V commands that this project's own paths are made of. */
 export function pathInk(path: string): Ink {
-  const points: (readonly [number, number])[] = []
-  let at: readonly [number, number] = [0, 0]
+  const ink: Point[] = []
+  let at: Point = [0, 0]
   for (const [, letter, numbers] of path.matchAll(/([MLHV])([^MLHVZ]+)/g)) {
     const [first = 0, second = 0] = numbers!.split(",").map(Number)
-    const next = ({ V: [at[0], first], H: [first, at[1]] } as const)[letter!] ?? ([first, second] as const)
-    points.push(...(letter === "M" ? [next] : between(at, next)))
+    const next: Point = letter === "V" ? [at[0], first] : letter === "H" ? [first, at[1]] : [first, second]
+    if (letter === "M") ink.push(next)
+    else addBetween(at, next, ink)
     at = next
   }
-  return points
+  return ink
+}
+
+const start = ({ x = 0, y = 0 }: SceneItem): Point => [x, y]
+const end = ({ x = 0, y = 0, x2 = x, y2 = y }: SceneItem): Point => [x2, y2]
+
+function addMark({ marktype, items = [] }: SceneMark, ink: Point[]): void {
+  const defined = items.filter((item) => item.defined !== false)
+  switch (marktype) {
+    case "group":
+      for (const item of items) for (const mark of item.items ?? []) addMark(mark, ink)
+      return
+    case "line":
+      return addPolyline(defined.map(start), ink)
+    case "area":
+      addPolyline(defined.map(start), ink)
+      return addPolyline(defined.map(end), ink)
+    case "rule":
+      return defined.forEach((item) => addPolyline([start(item), end(item)], ink))
+    case "symbol":
+      return defined.forEach((item) => void ink.push(start(item)))
+    case "path":
+      return defined.forEach(({ path }) => void ink.push(...pathInk(path ?? "")))
+    default:
+      return
+  }
 }
 
 /** Where the marks of a drawn panel put ink: points along lines and edges of bands, at markers, on error bars. */
-export function sceneInk(mark: SceneMark): Ink {
-  const items = (mark.items ?? []).filter((item) => item.defined !== false)
-  switch (mark.marktype) {
-    case "group":
-      return items.flatMap((item) => (item.items ?? []).flatMap(sceneInk))
-    case "line":
-      return polyline(items.map((item) => [item.x ?? 0, item.y ?? 0]))
-    case "area":
-      return [
-        ...polyline(items.map((item) => [item.x ?? 0, item.y ?? 0])),
-        ...polyline(items.map((item) => [item.x2 ?? item.x ?? 0, item.y2 ?? item.y ?? 0])),
-      ]
-    case "rule":
-      return items.flatMap((item) =>
-        polyline([
-          [item.x ?? 0, item.y ?? 0],
-          [item.x2 ?? item.x ?? 0, item.y2 ?? item.y ?? 0],
-        ]),
-      )
-    case "symbol":
-      return items.flatMap(({ bounds }) =>
-        bounds ? [[(bounds.x1 + bounds.x2) / 2, (bounds.y1 + bounds.y2) / 2] as const] : [],
-      )
-    case "path":
-      return items.flatMap(({ path }) => (path ? pathInk(path) : []))
-    default:
-      return []
-  }
+export function sceneInk(root: SceneMark): Ink {
+  const ink: Point[] = []
+  addMark(root, ink)
+  return ink
 }

@@ -21,6 +21,24 @@ function charactersByFace(elements: readonly SvgElement[], found = new Map<numbe
   return found
 }
 
+const remembered = 200
+const known = new Map<string, string>()
+
+/** The rule that carries a face cut down to some characters; remembered, for a page of figures shows the same few. */
+async function fontRule(index: number, characters: string): Promise<string> {
+  const key = `${index} ${characters}`
+  const hit = known.get(key)
+  if (hit !== undefined) return hit
+  const face = faces[index]!
+  const subset = await subsetFont(fontBytes(face), characters, { targetFormat: "woff2" })
+  const source = `url(data:font/woff2;base64,${subset.toString("base64")}) format("woff2")`
+  const style = face.italic ? "italic" : "normal"
+  const rule = `@font-face{font-family:"${face.family}";font-weight:${face.weight};font-style:${style};src:${source}}`
+  if (known.size >= remembered) known.clear()
+  known.set(key, rule)
+  return rule
+}
+
 /**
  * The style rules that carry the fonts of a drawing, each cut down to the characters that it shows, so that the SVG
  * looks the same wherever it is opened. Subsetting is deterministic: sorted characters give the same bytes.
@@ -28,15 +46,7 @@ function charactersByFace(elements: readonly SvgElement[], found = new Map<numbe
 export async function fontRules(body: string): Promise<string> {
   const used = [...charactersByFace(parseSvg(body))].sort(([a], [b]) => a - b)
   const rules = await Promise.all(
-    used.map(async ([index, characters]) => {
-      const face = faces[index]!
-      const subset = await subsetFont(fontBytes(face), [...characters].sort().join(""), {
-        targetFormat: "woff2",
-      })
-      const source = `url(data:font/woff2;base64,${subset.toString("base64")}) format("woff2")`
-      const style = face.italic ? "italic" : "normal"
-      return `@font-face{font-family:"${face.family}";font-weight:${face.weight};font-style:${style};src:${source}}`
-    }),
+    used.map(([index, characters]) => fontRule(index, [...characters].sort().join(""))),
   )
   return rules.join("")
 }
