@@ -1,9 +1,10 @@
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
+import { fitSeries, meanSeries } from "../curve-panel/curve-series"
 import { describeColumns } from "../curve-panel/described-columns"
-import type { PreparedCurve, PreparedCurves } from "../ensemble/prepare-curves"
-import type { DrawnSeries, PanelInput, TableColumn } from "../figure-kind"
+import type { PreparedCurves } from "../ensemble/prepare-curves"
+import type { PanelInput } from "../figure-kind"
 import { nameQuantities } from "../name-quantities"
-import { fitDecayCurve, type FittedCurve } from "./fit-curve"
+import { fitDecayCurve } from "./fit-curve"
 import type { DecayExponentParams } from "./params"
 import { prepareDecay } from "./prepare"
 import type { DecayCurve, DecayResult } from "./result"
@@ -22,9 +23,7 @@ export function fitDecay(prepared: PreparedCurves, params: DecayExponentParams):
     fit: fit.fit,
     quantities: fit.quantities,
   }))
-  const { columns } = prepared.bound
-  const time = columns.get("time")!
-  const observable = columns.get("observable")!
+  const columns = describeColumns(prepared.bound, params.reduction.normalise !== "none")
   const chosen =
     params.fit && params.fit.window.some((end) => end !== null) ? [warn("SELECTED_WINDOW", "the panel")] : []
   return {
@@ -32,8 +31,11 @@ export function fitDecay(prepared: PreparedCurves, params: DecayExponentParams):
     curves,
     quantities: nameQuantities(params.quantities, curves, ["exponent", "amplitude"]),
     warnings: [...fitted.flatMap(({ curve, fit }) => [...curve.warnings, ...fit.warnings]), ...chosen],
-    series: fitted.flatMap(({ curve, fit }) => seriesOf(curve, fit, time, observable)),
-    ...describeColumns(prepared.bound, params.reduction.normalise !== "none"),
+    series: curves.flatMap((curve) => [
+      meanSeries(curve, columns),
+      ...(curve.fit ? [fitSeries(curve.curve, curve.fit, columns, "power law")] : []),
+    ]),
+    ...columns,
   }
 }
 
@@ -48,50 +50,4 @@ export function computeDecay(
   onProgress?: (done: number, total: number) => void,
 ): DecayResult {
   return fitDecay(prepareDecay(input, params, onProgress), params)
-}
-
-function seriesOf(
-  curve: PreparedCurve,
-  { fit }: FittedCurve,
-  time: TableColumn,
-  observable: TableColumn,
-): DrawnSeries[] {
-  const t = { name: time.name, unit: time.unit, description: "abscissa" }
-  const y = (name: string, description: string, values: readonly (number | null)[]) => ({
-    name,
-    unit: observable.unit,
-    description,
-    values,
-  })
-  const mean: DrawnSeries = {
-    name: "mean",
-    curve: curve.curve,
-    columns: [
-      { ...t, values: Array.from(curve.abscissa) },
-      y("mean", curve.ids.length > 0 ? "mean over trajectories" : "value as given", Array.from(curve.mean)),
-      y("standard_error", "standard error of the mean", Array.from(curve.standardError, orNull)),
-    ],
-  }
-  if (!fit) return [mean]
-  const line: DrawnSeries = {
-    name: "fit",
-    curve: curve.curve,
-    columns: [
-      { ...t, values: fit.grid },
-      y("fit", "fitted power law; outside the window it is extrapolation", fit.line),
-      ...(fit.bandLow && fit.bandHigh
-        ? [
-            y("band_low", "lower end of the band", fit.bandLow),
-            y("band_high", "upper end of the band", fit.bandHigh),
-          ]
-        : []),
-      {
-        name: "outside_window",
-        unit: null,
-        description: "1 outside the fit window",
-        values: fit.outside.map(Number),
-      },
-    ],
-  }
-  return [mean, line]
 }

@@ -1,16 +1,16 @@
-import type { Quantity } from "@/lib/domain/quantity"
+import type { Interval, Quantity } from "@/lib/domain/quantity"
 import { writeQuantity } from "@/lib/domain/rounding"
 import { normalQuantile } from "@/lib/stats/distributions/normal-quantile"
 import { tQuantile } from "@/lib/stats/distributions/t-quantile"
 import type { StatisticalWarning } from "@/lib/stats/warnings/statistical-warning"
 import { warn } from "@/lib/stats/warnings/warning-catalogue"
+import { meanSeries } from "../curve-panel/curve-series"
 import { describeColumns } from "../curve-panel/described-columns"
 import { reduceCurves, type ReducedCurve } from "../ensemble/reduce-curves"
 import { windowMean, type WindowMean } from "../ensemble/window-mean"
 import type { PanelInput } from "../figure-kind"
 import { nameQuantities } from "../name-quantities"
-import { numberText, percentText } from "../sentence/parts"
-import { traceSeries } from "./series"
+import { evidenceWords, uncertaintyWords, windowWords } from "../sentence/method-words"
 import type { EnsembleTraceParams } from "./params"
 import type { TraceCurve, TraceResult } from "./result"
 
@@ -35,20 +35,14 @@ function saturationQuantity(
   const hasError = curve.origin === "given-errors" || curve.ids.length >= fewestForInterval
   const standardError = hasError ? mean.standardError : null
   const half = standardError === null ? null : factorOf(curve, level) * standardError
-  const type = curve.origin === "given-errors" ? "analytic" : "jackknife-t"
-  const among =
-    curve.origin === "given-errors"
-      ? "values with given standard errors, weighted by their inverse variance"
-      : `the mean of ${curve.ids.length} trajectories`
-  const uncertainty =
-    half === null
-      ? "no uncertainty can be given"
-      : `the ${percentText(level)} interval is from ${type === "analytic" ? "the given errors" : "the jackknife over trajectories with Student's t"}`
+  const type: Interval["type"] = curve.origin === "given-errors" ? "analytic" : "jackknife-t"
+  const interval: Interval | null =
+    half === null ? null : { level, low: value - half, high: value + half, type }
   return {
     name: "saturation",
     value,
     standardError,
-    interval: half === null ? null : { level, low: value - half, high: value + half, type },
+    interval,
     ...writeQuantity(value, standardError),
     provenance: {
       estimator: "time average in a window",
@@ -57,8 +51,8 @@ function saturationQuantity(
       ...(curve.ids.length > 0 ? { trajectories: curve.ids.length } : {}),
       ...(curve.ids.length > 1 ? { degreesOfFreedom: curve.ids.length - 1 } : {}),
       sentence:
-        `Average of ${among} over ${numberText(window[0])} ≤ ${abscissa} ≤ ${numberText(window[1])} ` +
-        `(${points} points); ${uncertainty}.`,
+        `Average of ${evidenceWords(curve.origin, curve.ids.length)} over ${windowWords(window, abscissa, points)}; ` +
+        `${uncertaintyWords(interval)}.`,
     },
   }
 }
@@ -116,7 +110,7 @@ export function computeTrace(input: PanelInput, params: EnsembleTraceParams): Tr
     curves: results,
     quantities: nameQuantities(params.quantities, results, ["saturation"]),
     warnings: traced.flatMap(({ warnings }) => warnings),
-    series: results.map((curve) => traceSeries(curve, described)),
+    series: results.map((curve) => meanSeries(curve, described)),
     ...described,
   }
 }

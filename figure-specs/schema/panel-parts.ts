@@ -63,6 +63,17 @@ export const intervalParams = z
   .strict()
 export type IntervalParams = z.infer<typeof intervalParams>
 
+/** The interval of a law's parameters: symmetric from deletions, or with its own two sides from resamples. */
+export const lawIntervalParams = z
+  .object({
+    method: z.enum(["jackknife-t", "expanded-percentile"]).default("jackknife-t"),
+    level: z.number().gt(0).lt(1).default(0.95),
+    resamples: z.int().min(100).max(20000).default(1000),
+    seed: z.int().min(0).max(Number.MAX_SAFE_INTEGER).default(1),
+  })
+  .strict()
+export type LawIntervalParams = z.infer<typeof lawIntervalParams>
+
 export const bandParams = z
   .object({
     kind: z.enum(["pointwise", "simultaneous", "none"]).default("pointwise"),

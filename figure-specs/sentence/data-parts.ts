@@ -109,7 +109,7 @@ export const whereParts = (data: DataBinding): readonly SentencePart[] => [
   words(", where "),
   slot(
     "/data/where",
-    data.where.length === 0 ? "no condition holds" : data.where.map(conditionText).join(" and "),
+    data.where.length === 0 ? "nothing is left out" : data.where.map(conditionText).join(" and "),
     "conditions on columns",
     { type: "filters" },
   ),
