@@ -1,6 +1,6 @@
 import { fitLaw, type LawRefusal } from "../laws/fit-law"
 import type { Law } from "../laws/law"
-import { parametricMeans } from "../laws/replicated-means"
+import { parametricMeans } from "../laws/parametric-means"
 import { levenbergMarquardt } from "../nonlinear/levenberg-marquardt"
 import { normalCovariance } from "../nonlinear/normal-covariance"
 import type { StatisticalWarning } from "../warnings/statistical-warning"

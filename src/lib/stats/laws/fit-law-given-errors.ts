@@ -7,7 +7,7 @@ import { fitLaw, type LawFit, type LawRefusal } from "./fit-law"
 import type { Law, LawScale } from "./law"
 import { replicatesOf, refusedShare } from "./law-errors"
 import { lawErrorWarnings, lawSearchWarnings } from "./law-warnings"
-import { parametricMeans } from "./replicated-means"
+import { parametricMeans } from "./parametric-means"
 
 /** Points with standard errors, in increasing abscissa. */
 export interface GivenPoints {

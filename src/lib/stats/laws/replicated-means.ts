@@ -1,7 +1,5 @@
 import type { Ensemble } from "../ensemble/ensemble"
 import { resampleCounts } from "../ensemble/bootstrap-moments"
-import { normalQuantile } from "../distributions/normal-quantile"
-import { randomStream } from "../random/random-stream"
 
 /** Means and their squared standard errors, of the whole sample and of its deletions or resamples. */
 export interface ReplicatedMeans {
@@ -14,14 +12,15 @@ export interface ReplicatedMeans {
   readonly variance: Float64Array
 }
 
-/** Writes how often each trajectory counts in replicate r. */
-type CountTrajectories = (replicate: number, out: Float64Array) => void
-
 /** Means without one trajectory at a time, for the jackknife. @param reference as in `resampledMeans` */
 export function deletionMeans(ensemble: Ensemble, reference: number | null = null): ReplicatedMeans {
-  return replicatedMeans(ensemble, reference, ensemble.ids.length, (replicate, out) => {
-    out.fill(1)
-    out[replicate] = 0
+  const m = ensemble.ids.length
+  const sums = new TrajectorySums(ensemble, reference)
+  for (let i = 0; i < m; i += 1) sums.add(i, 1)
+  return collect(sums, m, (i, write) => {
+    sums.add(i, -1)
+    write()
+    sums.add(i, 1)
   })
 }
 
@@ -35,112 +34,129 @@ export function resampledMeans(
   { resamples, seed }: { readonly resamples: number; readonly seed: number },
   reference: number | null = null,
 ): ReplicatedMeans {
-  return replicatedMeans(ensemble, reference, resamples, (replicate, out) =>
-    resampleCounts(ensemble.ids.length, seed, replicate, out),
-  )
+  const m = ensemble.ids.length
+  const sums = new TrajectorySums(ensemble, reference)
+  const counts = new Float64Array(m)
+  for (let i = 0; i < m; i += 1) sums.add(i, 1)
+  return collect(sums, resamples, (replicate, write) => {
+    resampleCounts(m, seed, replicate, counts)
+    sums.clear()
+    for (let i = 0; i < m; i += 1) if (counts[i]! > 0) sums.add(i, counts[i]!)
+    write()
+  })
+}
+
+/** Row 0 from the sums as they stand, then one row a replicate. */
+function collect(
+  sums: TrajectorySums,
+  replicates: number,
+  visit: (replicate: number, write: () => void) => void,
+): ReplicatedMeans {
+  const mean = new Float64Array((replicates + 1) * sums.points)
+  const variance = new Float64Array((replicates + 1) * sums.points)
+  sums.write(mean, variance, 0)
+  for (let r = 0; r < replicates; r += 1) visit(r, () => sums.write(mean, variance, (r + 1) * sums.points))
+  return { abscissa: sums.abscissa, replicates, mean, variance }
 }
 
 /**
- * Sums over deviations from the whole sample's mean, so that nothing large cancels; the error of a ratio includes its
- * covariance.
+ * Running sums over trajectories of weighted deviations d from the whole sample's mean, so that nothing large cancels:
+ * c v d, c v^2 d, c v^2 d^2 and, for a ratio, c v^2 d d0, with c the times a trajectory counts and v its weight.
  *
  * @see docs/methods.md, mean and error, normalisation
  */
-function replicatedMeans(
-  { abscissa, values, ids, weights }: Ensemble,
-  reference: number | null,
-  replicates: number,
-  countTrajectories: CountTrajectories,
-): ReplicatedMeans {
-  const m = ids.length
-  const times = abscissa.length
-  const isComplete = (k: number) => {
-    for (let i = 0; i < m; i += 1) if (Number.isNaN(values[i * times + k]!)) return false
-    return true
-  }
-  const index = [...abscissa.keys()].filter((k) => k !== reference && isComplete(k))
-  const points = index.length
-  const columns = reference === null ? index : [...index, reference]
-  const centre = columns.map((k) => {
-    let sum = 0
-    for (let i = 0; i < m; i += 1) sum += values[i * times + k]! / m
-    return sum
-  })
-  const mean = new Float64Array((replicates + 1) * points)
-  const variance = new Float64Array((replicates + 1) * points)
-  const counts = new Float64Array(m)
-  const shifts = new Float64Array(columns.length)
-  for (let row = 0; row <= replicates; row += 1) {
-    if (row === 0) counts.fill(1)
-    else countTrajectories(row - 1, counts)
-    let drawn = 0
-    let weight = 0
-    for (let i = 0; i < m; i += 1) {
-      drawn += counts[i]!
-      weight += counts[i]! * (weights?.[i] ?? 1)
+class TrajectorySums {
+  readonly abscissa: Float64Array
+  readonly points: number
+  private readonly columns: number
+  private readonly centre: Float64Array
+  private readonly deviations: Float64Array
+  private readonly weights: Float64Array
+  private readonly hasReference: boolean
+  private drawn = 0
+  private weight = 0
+  private weightSquares = 0
+  private readonly first: Float64Array
+  private readonly skew: Float64Array
+  private readonly square: Float64Array
+  private readonly cross: Float64Array
+
+  constructor({ abscissa, values, ids, weights }: Ensemble, reference: number | null) {
+    const m = ids.length
+    const times = abscissa.length
+    const isComplete = (k: number) => {
+      for (let i = 0; i < m; i += 1) if (Number.isNaN(values[i * times + k]!)) return false
+      return true
     }
+    const index = [...abscissa.keys()].filter((k) => k !== reference && isComplete(k))
+    const all = reference === null ? index : [...index, reference]
+    this.abscissa = Float64Array.from(index, (k) => abscissa[k]!)
+    this.points = index.length
+    this.columns = all.length
+    this.hasReference = reference !== null
+    this.weights = weights ?? new Float64Array(m).fill(1)
+    this.centre = new Float64Array(this.columns)
+    this.deviations = new Float64Array(m * this.columns)
+    this.first = new Float64Array(this.columns)
+    this.skew = new Float64Array(this.columns)
+    this.square = new Float64Array(this.columns)
+    this.cross = new Float64Array(this.columns)
+    all.forEach((k, c) => {
+      for (let i = 0; i < m; i += 1) this.centre[c] = this.centre[c]! + values[i * times + k]! / m
+      for (let i = 0; i < m; i += 1)
+        this.deviations[i * this.columns + c] = values[i * times + k]! - this.centre[c]!
+    })
+  }
+
+  clear(): void {
+    this.drawn = 0
+    this.weight = 0
+    this.weightSquares = 0
+    for (const sums of [this.first, this.skew, this.square, this.cross]) sums.fill(0)
+  }
+
+  /** Counts trajectory i so many times more. */
+  add(i: number, count: number): void {
+    const v = this.weights[i]!
+    const cv = count * v
+    const cvv = cv * v
+    const row = i * this.columns
+    const d0 = this.deviations[row + this.points] ?? 0
+    this.drawn += count
+    this.weight += cv
+    this.weightSquares += cvv
+    const { deviations, first, skew, square, cross, columns, hasReference } = this
+    for (let c = 0; c < columns; c += 1) {
+      const d = deviations[row + c]!
+      const weighted = cvv * d
+      first[c] = first[c]! + cv * d
+      skew[c] = skew[c]! + weighted
+      square[c] = square[c]! + weighted * d
+      if (hasReference) cross[c] = cross[c]! + weighted * d0
+    }
+  }
+
+  /** Writes mean and squared error, or those of the ratio to the reference time, covariance included. */
+  write(mean: Float64Array, variance: Float64Array, offset: number): void {
+    const { points, weight, weightSquares, first, skew, square, cross, drawn } = this
     const factor = drawn > 1 ? drawn / (drawn - 1) / (weight * weight) : Number.NaN
-    shifts.fill(0)
-    for (let i = 0; i < m; i += 1) {
-      const cv = counts[i]! * (weights?.[i] ?? 1)
-      if (cv === 0) continue
-      for (let c = 0; c < columns.length; c += 1)
-        shifts[c] = shifts[c]! + (cv * (values[i * times + columns[c]!]! - centre[c]!)) / weight
+    const centredSquare = (c: number) => {
+      const shift = first[c]! / weight
+      return square[c]! - 2 * shift * skew[c]! + shift * shift * weightSquares
     }
-    const base = reference === null ? 1 : centre[points]! + shifts[points]!
-    for (let c = 0; c < points; c += 1) mean[row * points + c] = (centre[c]! + shifts[c]!) / base
-    for (let i = 0; i < m; i += 1) {
-      const v = weights?.[i] ?? 1
-      const cvv = counts[i]! * v * v
-      if (cvv === 0) continue
-      const d0 = reference === null ? 0 : values[i * times + reference]! - base
-      for (let c = 0; c < points; c += 1) {
-        const at = row * points + c
-        const d = values[i * times + columns[c]!]! - centre[c]! - shifts[c]! - mean[at]! * d0
-        variance[at] = variance[at]! + cvv * d * d
-      }
-    }
+    const shift0 = this.hasReference ? first[points]! / weight : 0
+    const base = this.hasReference ? this.centre[points]! + shift0 : 1
+    const q0 = this.hasReference ? centredSquare(points) : 0
     for (let c = 0; c < points; c += 1) {
-      const at = row * points + c
-      variance[at] = (variance[at]! * factor) / (base * base)
+      const shift = first[c]! / weight
+      const ratio = (this.centre[c]! + shift) / base
+      let q = centredSquare(c)
+      if (this.hasReference) {
+        const q1 = cross[c]! - shift * skew[points]! - shift0 * skew[c]! + shift * shift0 * weightSquares
+        q += ratio * ratio * q0 - 2 * ratio * q1
+      }
+      mean[offset + c] = ratio
+      variance[offset + c] = (factor * Math.max(0, q)) / (base * base)
     }
   }
-  return { abscissa: Float64Array.from(index, (k) => abscissa[k]!), replicates, mean, variance }
-}
-
-/** Above this relative error a positive value is drawn from a lognormal, which cannot change its sign. */
-const lognormalAbove = 0.2
-
-/**
- * Points with given standard errors in place of an ensemble: resample b is y + sigma z, points independent; a positive y
- * with sigma/y > 0.2 is drawn from the lognormal of the same mean and standard deviation.
- *
- * @param t abscissas, increasing; @param y values; @param sigma standard errors, positive; all of length K
- * @see docs/methods.md, values with errors
- */
-export function parametricMeans(
-  t: Float64Array,
-  y: Float64Array,
-  sigma: Float64Array,
-  { resamples, seed }: { readonly resamples: number; readonly seed: number },
-): ReplicatedMeans {
-  const points = t.length
-  const mean = new Float64Array((resamples + 1) * points)
-  const variance = new Float64Array((resamples + 1) * points)
-  mean.set(y)
-  for (let b = 0; b < resamples; b += 1) {
-    const stream = randomStream(seed, b)
-    for (let k = 0; k < points; k += 1) {
-      const z = normalQuantile((stream.uint32() + 0.5) / 4294967296)
-      const relative = sigma[k]! / y[k]!
-      const logVariance = Math.log1p(relative * relative)
-      mean[(b + 1) * points + k] =
-        relative > lognormalAbove
-          ? y[k]! * Math.exp(Math.sqrt(logVariance) * z - logVariance / 2)
-          : y[k]! + sigma[k]! * z
-    }
-  }
-  for (let row = 0; row <= resamples; row += 1)
-    for (let k = 0; k < points; k += 1) variance[row * points + k] = sigma[k]! ** 2
-  return { abscissa: t, replicates: resamples, mean, variance }
 }
