@@ -50,8 +50,6 @@ const options: EmbedOptions = {
   hover: false,
   tooltip: false,
   defaultStyle: false,
-  // The whole chart is one image with its own description; roles on every mark would only repeat it.
-  config: { aria: false } as NonNullable<EmbedOptions["config"]>,
 }
 
 /** Free space at the rim, in pixels. */
@@ -151,7 +149,7 @@ function SetChart({
   return (
     <div className="relative" style={{ width, height }} role="img" aria-label={drawing.alternativeText}>
       {under.length > 0 && layer(under)}
-      <div className="absolute" style={{ left, top }}>
+      <div className="absolute" style={{ left, top }} aria-hidden="true">
         <VegaEmbed spec={template} options={options} onEmbed={embedded} />
       </div>
       {layer(shapes)}
