@@ -5,7 +5,7 @@ import type { AxisDrawing, Frame } from "./drawing"
 import { freePlace, inkInside } from "./free-place"
 import { labelParts } from "./label-parts"
 import { defaultLook } from "./look"
-import { readLookPatch } from "./look-patch"
+import { lookPatch, patchLook } from "./look-patch"
 import { markerPath } from "./markers"
 import { fractionAlong } from "./position"
 import { textCorners, type TextShape } from "./shape"
@@ -202,19 +202,27 @@ describe("labels", () => {
 })
 
 describe("look settings", () => {
-  test("what is on the list is taken", () => {
-    expect(
-      readLookPatch({ fontPt: 8, palette: ["#112233"], letter: { bold: true } }, "/style").issues,
-    ).toEqual([])
+  test("what is on the list is taken over, null takes it back", () => {
+    const patch = lookPatch.parse({
+      fontPt: 8,
+      palette: ["#112233"],
+      letter: { bold: true },
+      curveWidthPt: null,
+    })
+    expect(patchLook(defaultLook, patch)).toEqual({
+      ...defaultLook,
+      fontPt: 8,
+      palette: ["#112233"],
+      letter: { ...defaultLook.letter, bold: true },
+    })
   })
 
   test.each([
-    [{ encode: {} }, "/style"],
-    [{ fontPt: "8; url(x)" }, "/style/fontPt"],
-    [{ palette: ["url(http://example.org)"] }, "/style/palette/0"],
-    [{ fontFamily: "Comic" }, "/style/fontFamily"],
-    [{ fontPt: { signal: "1" } }, "/style/fontPt"],
-  ])("%j is refused at its place", (patch, pointer) => {
-    expect(readLookPatch(patch, "/style").issues).toMatchObject([{ pointer, code: "style-refused" }])
-  })
+    [{ encode: {} }],
+    [{ fontPt: "8; url(x)" }],
+    [{ palette: ["url(http://example.org)"] }],
+    [{ fontFamily: "Comic" }],
+    [{ fontPt: { signal: "1" } }],
+    [{ curveWidthPt: 0 }],
+  ])("%j is refused", (patch) => expect(lookPatch.safeParse(patch).success).toBe(false))
 })

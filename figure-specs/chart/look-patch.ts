@@ -1,5 +1,4 @@
 import { z } from "zod"
-import type { SpecIssue } from "../spec-error"
 import { markerNames, type Look } from "./drawing"
 
 const points = (least: number, most: number) => z.number().min(least).max(most)
@@ -45,24 +44,4 @@ export function patchLook(look: Look, { letter, ...patch }: LookPatch): Look {
   const set = Object.fromEntries(Object.entries(patch).filter(([, value]) => value != null))
   const letters = Object.fromEntries(Object.entries(letter ?? {}).filter(([, value]) => value !== undefined))
   return { ...look, ...set, letter: { ...look.letter, ...letters } }
-}
-
-/** Checks a patch from a spec; issues carry their place below `pointer`. */
-export function readLookPatch(
-  patch: unknown,
-  pointer: string,
-): { readonly patch: LookPatch; readonly issues: readonly SpecIssue[] } {
-  const read = lookPatch.safeParse(patch)
-  if (read.success) return { patch: read.data, issues: [] }
-  const issues = read.error.issues.map((issue): SpecIssue => {
-    const unknown = issue.code === "unrecognized_keys" ? issue.keys.map((key) => `“${key}”`).join(", ") : null
-    return {
-      pointer: [pointer, ...issue.path].join("/"),
-      code: "style-refused",
-      message: unknown
-        ? `${unknown} is not a look setting. Settings: ${Object.keys(lookPatch.shape).join(", ")}.`
-        : issue.message,
-    }
-  })
-  return { patch: {}, issues }
 }

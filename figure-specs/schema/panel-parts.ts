@@ -1,4 +1,5 @@
 import { z } from "zod"
+import { lookPatch } from "../chart/look-patch"
 
 /** A label: text with TeX between dollar signs. Control characters are refused because the typesetter uses two of them. */
 export const label = z
@@ -63,16 +64,22 @@ export const intervalParams = z
   .strict()
 export type IntervalParams = z.infer<typeof intervalParams>
 
-/** The interval of a law's parameters: symmetric from deletions, or with its own two sides from resamples. */
-export const lawIntervalParams = z
-  .object({
-    method: z.enum(["jackknife-t", "expanded-percentile"]).default("jackknife-t"),
-    level: z.number().gt(0).lt(1).default(0.95),
-    resamples: z.int().min(100).max(20000).default(1000),
-    seed: z.int().min(0).max(Number.MAX_SAFE_INTEGER).default(1),
-  })
-  .strict()
-export type LawIntervalParams = z.infer<typeof lawIntervalParams>
+/**
+ * The interval of a law's parameters: symmetric from deletions, or with its own two sides from resamples.
+ *
+ * @param method the default
+ */
+export const lawIntervalParams = (method: "jackknife-t" | "expanded-percentile") =>
+  z
+    .object({
+      method: z.enum(["jackknife-t", "expanded-percentile"]).default(method),
+      level: z.number().gt(0).lt(1).default(0.95),
+      resamples: z.int().min(100).max(20000).default(1000),
+      seed: z.int().min(0).max(Number.MAX_SAFE_INTEGER).default(1),
+    })
+    .strict()
+    .prefault({})
+export type LawIntervalParams = z.infer<ReturnType<typeof lawIntervalParams>>
 
 export const bandParams = z
   .object({
@@ -105,5 +112,5 @@ export const reductionParams = z
   .strict()
 export type ReductionParams = z.infer<typeof reductionParams>
 
-/** RFC 7396 merge patch on look settings; lib/render holds the allow-list and refuses the rest. */
-export const stylePatch = z.record(z.string().max(60), z.json()).default({})
+/** RFC 7396 merge patch on the look of the figure, for one panel. */
+export const stylePatch = lookPatch.default({})

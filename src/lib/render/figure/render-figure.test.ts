@@ -127,7 +127,6 @@ describe("a figure that cannot be drawn says why and where", () => {
     [{ axes: { x: { label: "a $\\frac{$" } } }, "/panels/0/axes/x/label", "tex-invalid"],
     [{ references: [{ exponent: -1, label: "$t" }] }, "/panels/0/references/0/label", "dollar-unclosed"],
     [{ title: "\\$ 漢" }, "/panels/0/title", "glyph-missing"],
-    [{ style: { tooltip: "x" } }, "/panels/0/style", "style-refused"],
     [{ place: { row: 2, column: 1 } }, "/panels/0/place", "place-outside"],
   ])("%j", async (changes, pointer, code) => {
     await expect(renderFigure(single(changes), [handMadeResult(1)])).rejects.toMatchObject({

@@ -1,10 +1,10 @@
 import type { Legend, Look } from "@specs/chart/drawing"
 import { defaultLook } from "@specs/chart/look"
-import { patchLook, readLookPatch, type LookPatch } from "@specs/chart/look-patch"
+import { patchLook, type LookPatch } from "@specs/chart/look-patch"
 import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
 import { kindOf as kindByName } from "@specs/kinds"
-import { SpecError, type SpecIssue } from "@specs/spec-error"
+import type { SpecIssue } from "@specs/spec-error"
 import { drawMarks, type DrawnMarks } from "../panel/draw-marks"
 import { fontRules } from "../svg/embed-fonts"
 import { typesetterFor } from "../typeset/typesetter"
@@ -37,19 +37,15 @@ export interface RenderOptions {
 }
 
 /** The look of each panel: the figure's, changed by the panel's own style. The face is the figure's: one paper, one face. */
-function panelLooks(spec: FigureSpec, look: Look): readonly Look[] {
-  const read = spec.panels.map(({ style }, index) => readLookPatch(style, `/panels/${index}/style`))
-  const issues = read.flatMap((one) => one.issues)
-  if (issues.length > 0) throw new SpecError(issues)
-  return read.map(({ patch }) => ({ ...patchLook(look, patch), fontFamily: look.fontFamily }))
-}
+const panelLooks = (spec: FigureSpec, look: Look): readonly Look[] =>
+  spec.panels.map(({ style }) => ({ ...patchLook(look, style), fontFamily: look.fontFamily }))
 
 /**
  * Draws a figure at its exact size.
  *
  * @param spec a figure spec with defaults filled in
  * @param results one result a panel, in the order of the spec
- * @throws SpecError with every label, place or style setting that cannot be used
+ * @throws SpecError with every label and place that cannot be used
  * @see docs/rendering.md
  */
 export async function renderFigure(

@@ -35,14 +35,16 @@ const strictLogger = (): vega.LoggerInterface => {
 }
 
 interface SceneNode {
+  readonly marktype?: string
   clip_id?: unknown
   items?: SceneNode[]
 }
 
-/** Clip ids come from a counter of the process and stay on scene items: forget them so that each drawing counts anew. */
+/** Clip ids come from a counter of the process and stay on groups: forget them so that each drawing counts anew. */
 function forgetClipIds(node: SceneNode): void {
-  delete node.clip_id
-  node.items?.forEach(forgetClipIds)
+  if (node.clip_id !== undefined) delete node.clip_id
+  // Only groups clip, and only they have items that have items.
+  if (node.marktype === undefined || node.marktype === "group") node.items?.forEach(forgetClipIds)
 }
 
 /** A panel's marks as an SVG fragment with its origin at the frame's top left, and where their ink is. */

@@ -23,9 +23,9 @@ class FigureRenderer extends scenegraph.SVGStringRenderer {
    * 600 dpi. The same picture comes from the opacities of fill and stroke.
    */
   override attr(scene: unknown, item: unknown, attributes: unknown, tag?: string): Record<string, unknown> {
-    const written_ = super.attr(scene, item, attributes, tag)
-    const { opacity, ...rest } = written_
-    if (opacity == null || tag === undefined || tag === "image") return written_
+    const all = super.attr(scene, item, attributes, tag)
+    if (all["opacity"] == null || tag === undefined || tag === "image") return all
+    const { opacity, ...rest } = all
     const share = Number(opacity)
     if (share >= 1) return rest
     if (share <= 0) return { ...rest, display: "none" }
