@@ -1,5 +1,6 @@
 import { decayExponent } from "./decay-exponent"
 import { ensembleTrace } from "./ensemble-trace"
+import { finiteTimeDivergence } from "./finite-time-divergence"
 import type { FigureKind, PanelResult } from "./figure-kind"
 import type { PanelParams } from "./registry"
 
@@ -7,6 +8,7 @@ import type { PanelParams } from "./registry"
 const kinds = {
   "decay-exponent": decayExponent,
   "ensemble-trace": ensembleTrace,
+  "finite-time-divergence": finiteTimeDivergence,
 } satisfies Record<PanelParams["kind"], object>
 
 export type KindName = keyof typeof kinds

@@ -2,22 +2,12 @@ import { beforeAll, describe, expect, test } from "vitest"
 import { computeFigure } from "../compute-figure"
 import { figureSpec, type FigureSpecInput } from "../figure-spec"
 import type { DataTable } from "../figure-kind"
+import { longTable } from "@tests/support/long-table"
 import { SpecError } from "../spec-error"
 import { logTimes } from "../../scripts/simulate/log-times"
 import { simulateAnnihilation } from "../../scripts/simulate/pair-annihilation"
 import { decaySentence } from "./sentence"
 import type { DecayExponentParams } from "./params"
-
-/** A long table from rows of numbers. */
-const tableOf = (names: readonly string[], rows: readonly (readonly number[])[]): DataTable => ({
-  rows: rows.length,
-  columns: names.map((name, c) => ({
-    name,
-    unit: null,
-    symbol: null,
-    values: Float64Array.from(rows, (row) => row[c]!),
-  })),
-})
 
 const specOf = (panel: object): FigureSpecInput =>
   ({
@@ -47,7 +37,7 @@ describe("pair annihilation on a ring", () => {
   const times = [0, ...logTimes(0.1, 3000, 20)]
   beforeAll(() => {
     const densities = simulateAnnihilation({ sites: 2000, trajectories: 200, rate: 1, times, seed: 20261201 })
-    table = tableOf(
+    table = longTable(
       ["run", "t", "n"],
       densities.flatMap((row, i) => times.map((t, k) => [i + 1, t, row[k]!])),
     )
@@ -110,7 +100,7 @@ describe("exact data", () => {
       run % 2 ? 0.1 : 0.2,
     ]),
   )
-  const table = tableOf(["run", "t", "n", "gamma"], rows)
+  const table = longTable(["run", "t", "n", "gamma"], rows)
 
   test("a pure power law is recovered to the last digits (arithmetic)", () => {
     const [exponent] = compute({ fit: {} }, table).curves[0]!.quantities
@@ -138,7 +128,7 @@ describe("exact data", () => {
   })
 
   test("values with given errors instead of trajectories", () => {
-    const given = tableOf(
+    const given = longTable(
       ["t", "n", "sigma"],
       [1, 2, 5, 10, 20, 50, 100, 200].map((t, k) => [
         t,
@@ -177,7 +167,7 @@ describe("exact data", () => {
   })
 
   test("unequal grids are refused and repaired only when asked", () => {
-    const uneven = tableOf(
+    const uneven = longTable(
       ["run", "t", "n"],
       rows.filter((row) => !(row[0] === 3 && row[1] === 8)).map((row) => row.slice(0, 3)),
     )

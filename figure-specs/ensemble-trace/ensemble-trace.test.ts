@@ -1,18 +1,10 @@
 import { expect, test } from "vitest"
 import { simulateCornerGrowth } from "../../scripts/simulate/corner-growth"
 import type { DataTable } from "../figure-kind"
+import { longTable } from "@tests/support/long-table"
 import { computeTrace } from "./compute"
 import { ensembleTraceParams } from "./params"
 
-const tableOf = (names: readonly string[], rows: readonly (readonly number[])[]): DataTable => ({
-  rows: rows.length,
-  columns: names.map((name, c) => ({
-    name,
-    unit: null,
-    symbol: null,
-    values: Float64Array.from(rows, (row) => row[c]!),
-  })),
-})
 const compute = (table: DataTable, panel: object) =>
   computeTrace(
     { tables: new Map([["d", table]]) },
@@ -27,7 +19,7 @@ test("the width of a finite ring saturates at (L + 1)/12, within its own interva
   // Steps +1 and -1 in uniformly random order on a closed path (arithmetic); see scripts/simulate/corner-growth.ts.
   const times = Array.from({ length: 40 }, (_, k) => 25 * (k + 1))
   const widths = simulateCornerGrowth({ sites: 48, trajectories: 150, times, seed: 21 })
-  const table = tableOf(
+  const table = longTable(
     ["run", "t", "y"],
     widths.flatMap((row, run) => times.map((t, k) => [run, t, row[k]!])),
   )
@@ -40,7 +32,7 @@ test("the width of a finite ring saturates at (L + 1)/12, within its own interva
 })
 
 // Three trajectories at two times, and their window averages 2, 3, 7 (arithmetic).
-const small = tableOf(
+const small = longTable(
   ["run", "t", "y"],
   [
     [1, 1, 1],
@@ -95,7 +87,7 @@ test("the band is Student's t around the mean, and absent for a single trajector
 })
 
 test("given errors are weighted by their inverse variance", () => {
-  const given = tableOf(
+  const given = longTable(
     ["t", "y", "s"],
     [
       [1, 2, 1],

@@ -1,5 +1,5 @@
 import type { SentencePart } from "../figure-kind"
-import type { BandParams, IntervalParams } from "../schema/panel-parts"
+import type { BandParams, IntervalParams, LawIntervalParams } from "../schema/panel-parts"
 import { choice, numberText, percentText, slot, words } from "./parts"
 
 /** "**t from 20 to 2000**": a window of the abscissa. */
@@ -45,7 +45,11 @@ const levels = choice([
 ])
 
 /** "uncertainty from **leaving out one trajectory at a time** at **95 %**". */
-export function intervalParts(interval: IntervalParams, at = "/fit/interval"): readonly SentencePart[] {
+export function intervalParts(
+  interval: Pick<IntervalParams, "method" | "level" | "resamples" | "seed">,
+  at = "/fit/interval",
+  methods: readonly IntervalParams["method"][] = Object.keys(intervalNames) as IntervalParams["method"][],
+): readonly SentencePart[] {
   const resamples =
     interval.method === "jackknife-t"
       ? []
@@ -71,13 +75,19 @@ export function intervalParts(interval: IntervalParams, at = "/fit/interval"): r
       `${at}/method`,
       intervalNames[interval.method],
       "where the interval comes from",
-      choice(Object.entries(intervalNames)),
+      choice(methods.map((method) => [method, intervalNames[method]])),
     ),
     ...resamples,
     words(" at "),
     slot(`${at}/level`, percentText(interval.level), "level of the interval", levels),
   ]
 }
+
+/** The same for the parameters of a law. */
+export const lawIntervalParts = (
+  interval: LawIntervalParams,
+  at = "/fit/interval",
+): readonly SentencePart[] => intervalParts(interval, at, ["jackknife-t", "expanded-percentile"])
 
 /** "**pointwise 95 % band**". */
 export const bandSlot = (band: BandParams, at = "/fit/band"): SentencePart =>

@@ -91,11 +91,11 @@ function meeting(share = 1): SimulatedTable {
   return tableOf(["run", "L", "tau [1/J]"], rows)
 }
 
-/** Mean size of merging clusters of 100 000 particles on the way to their divergence, 40 trajectories. */
+/** Mean size of merging clusters of 400 000 particles on the way to their divergence, 40 trajectories. */
 function merging(share = 1): SimulatedTable {
-  const times = Array.from({ length: 46 }, (_, k) => Number((0.02 * k).toFixed(2)))
+  const times = Array.from({ length: 47 }, (_, k) => Number((0.02 * k).toFixed(2)))
   const rows = simulateMerging({
-    particles: 100_000,
+    particles: 400_000,
     trajectories: some(40, share),
     times,
     seed: 1960,
