@@ -29,3 +29,12 @@ export {
 export { type IntakeCodeName, type Severity, IntakeRefusal, intakeCodes, sentence } from "./intake-codes"
 export { type IntakeLimits, ROWS_PER_PART, intakeLimits } from "./intake-limits"
 export { collectColumns, type CollectedColumn } from "./collect-columns"
+export {
+  type ColumnChange,
+  type TrajectoryChange,
+  type TrajectoryPrints,
+  type VersionComparison,
+  compareVersions,
+} from "./compare-versions"
+export { trajectoryPrints } from "./trajectory-prints"
+export { type LoadedColumn, type LongTable, longTable } from "./long-table"

@@ -20,7 +20,6 @@ export const intakeCodes = {
   "too-much-text": refuse("{max} bytes of text in 65,536 rows is the limit. Nothing was stored."),
   "recipe-mismatch": refuse("The recipe describes {k} columns; the file has {n}."),
   "line-account": refuse("{n} of {max} lines are accounted for; the reader is wrong. Nothing was stored."),
-  "unreadable-format": refuse("Files of the format {format} are not read here."),
   "format-by-content": problem("The name says {named}; the content is {format} and was read as such."),
 
   // Compression and archives
@@ -150,6 +149,7 @@ export const intakeCodes = {
   "parquet-damaged": refuse("Not a complete Parquet file."),
   "parquet-codec": refuse("Compressed with {codec}, which is not read."),
   "parquet-type": problem("{column}: type {type} is not read."),
+  "json-encoding": refuse("JSON is written in UTF-8; this file is not."),
   "json-line": problem("Line {line} is not a JSON object with the columns of the others; set aside."),
 } as const satisfies Record<string, IntakeCode>
 
@@ -173,13 +173,15 @@ export type SentenceValues = Readonly<Record<string, string | number>>
 /** Longest text from a file that a sentence repeats. */
 const MAX_QUOTED = 120
 
-/** The sentence of a code with its {places} filled in; numbers get group marks, texts from the file are cut. */
+/** Places that hold counts, which get group marks; line numbers and values do not. */
+const counts = new Set(["n", "k", "max"])
+
+/** The sentence of a code with its {places} filled in; texts from the file are cut. */
 export function sentence(code: IntakeCodeName, values: SentenceValues = {}): string {
   return intakeCodes[code].sentence.replace(/\{(\w+)\}/g, (place, key: string) => {
     const value = Object.hasOwn(values, key) ? values[key] : undefined
     if (value === undefined) return place
-    if (typeof value === "number")
-      return Number.isInteger(value) && Math.abs(value) >= 10_000 ? grouped(value) : String(value)
+    if (typeof value === "number") return counts.has(key) && value >= 10_000 ? grouped(value) : String(value)
     return value.length > MAX_QUOTED ? `${value.slice(0, MAX_QUOTED)}…` : value
   })
 }

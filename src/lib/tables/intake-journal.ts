@@ -45,6 +45,11 @@ export class IntakeJournal {
     if (count <= this.maxListed) this.problems.push(problem)
   }
 
+  /** Counts problems that the reader did not keep. */
+  more(code: IntakeCodeName, count: number): void {
+    if (count > 0) this.#counts.set(code, (this.#counts.get(code) ?? 0) + count)
+  }
+
   ask(
     code: IntakeCodeName,
     values: SentenceValues,

@@ -3,6 +3,7 @@ import { type ContentFormat, detectFormat, formatOfHead, otherFormatInName } fro
 import { readHdf5 } from "./hdf5/read-hdf5"
 import { IntakeRefusal, sentence } from "./intake-codes"
 import { intakeLimits } from "./intake-limits"
+import { readJsonLines } from "./json-lines/read-json-lines"
 import { readNpy } from "./npy/read-npy"
 import { openRecipe } from "./open-recipe"
 import { readParquet } from "./parquet/read-parquet"
@@ -121,7 +122,7 @@ async function readPlain(
   if (format === "text") return readText(stream, context)
   if (format === "hdf5") return readHdf5(source, context)
   if (format === "parquet") return readParquet(source, context)
-  throw new IntakeRefusal("unreadable-format", { format })
+  return readJsonLines(stream, context)
 }
 
 /** The content decides; a name that promises another format is mentioned. */

@@ -57,9 +57,11 @@ async function readOnce(
   const { limits, recipe, sink, signal, onProgress } = context
   const journal = new IntakeJournal(limits.maxListed, context.onProblem)
   listing.report(journal)
-  for (const [source, { code, values }] of before)
-    journal.problem(code, { name: source.place, ...values }, { line: source.place })
+  for (const [{ place }, { code, values }] of before)
+    journal.problem(code, { name: place, column: place, ...values }, { line: place })
   const { sources, asked } = asTables(listing.sources, recipe, journal)
+  const [failed] = before.values()
+  if (sources.length === 0 && failed) throw new IntakeRefusal(failed.code, failed.values)
   checkSize(sources, context)
   const count = sources.reduce((sum, { outputs }) => sum + outputs.length, 0)
   if (recipe.columns && recipe.columns.length !== count) {
