@@ -28,7 +28,7 @@ export function curveProblem(
     points: x.length,
     parameters: p,
     ...(bounds && { bounds }),
-    exactBelow: 1e-31 * squaresOfData,
+    exactBelow: 1e-28 * squaresOfData,
     residuals(parameters, out) {
       for (let i = 0; i < x.length; i += 1)
         out[i] = rootWeights[i]! * (curve.value(x[i]!, parameters, slopes) - y[i]!)

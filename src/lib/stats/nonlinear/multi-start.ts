@@ -29,12 +29,16 @@ export function multiStart(
 ): MultiStartSolution {
   const starts = [...given, ...bestOfGrid(problem, grid, 2), ...randomPoints(problem)]
   const runs = starts.map((start) => levenbergMarquardt(problem, start))
-  const converged = runs
-    .filter(({ code }) => code === "converged")
+  const defined = runs
+    .filter(({ sumOfSquares }) => !Number.isNaN(sumOfSquares))
     .sort((a, b) => a.sumOfSquares - b.sumOfSquares)
+  const converged = defined.filter(({ code }) => code === "converged")
   const [best, second] = converged
-  if (!best) return { ...runs[0]!, starts: runs.length, convergedStarts: 0, confirmed: false }
-  const room = agreement * best.sumOfSquares + (problem.exactBelow ?? 0)
+  const lowest = defined[0] ?? runs[0]!
+  const room = agreement * (best?.sumOfSquares ?? 0) + (problem.exactBelow ?? 0)
+  // A run that got lower without converging shows that the converged ones are not the minimum.
+  if (!best || best.sumOfSquares - lowest.sumOfSquares > room)
+    return { ...lowest, starts: runs.length, convergedStarts: converged.length, confirmed: false }
   // The evaluation state of the problem (linear coefficients) is left at the best point.
   problem.residuals(best.parameters, new Float64Array(problem.points))
   return {

@@ -71,7 +71,7 @@ export function separableProblem(
     points: n,
     parameters: q,
     ...(bounds && { bounds }),
-    exactBelow: 1e-31 * squaresOfData,
+    exactBelow: 1e-28 * squaresOfData,
     coefficients: () => coefficients,
     residuals(shapes, out) {
       norms.fill(0)

@@ -140,6 +140,10 @@ export const warningCatalogue = {
     sentence:
       "The first and the second half of the series differ by {shift} standard errors: it has no stationary mean.",
   },
+  FRONT_NOT_STRAIGHT: {
+    severity: "caution",
+    sentence: "The arrival times bend: one velocity does not describe the front over these positions.",
+  },
   NONLINEAR_ERRORS: {
     severity: "note",
     sentence:
