@@ -2,11 +2,8 @@ import { useQuery, useQueryClient } from "@tanstack/react-query"
 import { useState } from "react"
 import { Button, ButtonLink } from "@/components/parts/button"
 import { EmptyPlace } from "@/components/parts/empty-place"
-import { Field, TextArea } from "@/components/parts/field"
-import { GraveDialog } from "@/components/parts/dialog"
 import { HeatMark, HeatStrip } from "@/components/parts/heat"
 import { MarginNote } from "@/components/parts/note"
-import { ProgressLine } from "@/components/parts/progress-line"
 import { When } from "@/components/parts/when"
 import { call, sentenceOf } from "@/lib/client/call"
 import { Island } from "@/lib/client/island"
@@ -22,7 +19,10 @@ import {
 } from "@/lib/contracts/drafts"
 import type { FigureAnswer } from "@/lib/contracts/figures"
 import { roleMay, type Role } from "@/lib/domain/policy"
+import { BundlePlace } from "./bundle-place"
+import { LockPlace } from "./lock-place"
 import { PinList } from "./pin-list"
+import { SignOffs } from "./sign-offs"
 
 interface Props {
   readonly manuscriptId: string
@@ -168,179 +168,5 @@ function Draft({ manuscriptId, role, personId, draft: initial, figures }: Props)
         )}
       </aside>
     </article>
-  )
-}
-
-function SignOffs({
-  draft,
-  signed,
-  signedBefore,
-  maySign,
-  onSign,
-  onWithdraw,
-}: {
-  draft: DraftAnswer
-  signed: boolean
-  signedBefore: boolean
-  maySign: boolean
-  onSign: () => void
-  onWithdraw: () => void
-}) {
-  return (
-    <section>
-      <h2 className="m-0 text-lead">Sign-offs</h2>
-      <ul className="m-0 mt-2 grid list-none gap-1 p-0">
-        {draft.signOffs.map((entry) => (
-          <li key={entry.person.id}>
-            <HeatMark heat={entry.stale ? "stale" : "settled"}>
-              {entry.person.name}, <When at={entry.at} />
-              {entry.stale && ": signed an earlier state"}
-            </HeatMark>
-          </li>
-        ))}
-        {draft.state === "open" &&
-          draft.waitingFor
-            .filter((person) => !draft.signOffs.some((entry) => entry.person.id === person.id))
-            .map((person) => (
-              <li key={person.id}>
-                <HeatMark heat="work">{person.name} has not signed off</HeatMark>
-              </li>
-            ))}
-      </ul>
-      {maySign && (
-        <div className="measure mt-4 grid gap-2">
-          <p className="m-0 font-serif">
-            {signed
-              ? "You have signed off on exactly what is pinned above. If anything changes, your sign-off becomes stale."
-              : `You approve the figures, numbers, data and captions pinned above${signedBefore ? ", which have changed since you signed" : ""}.`}
-          </p>
-          <div>
-            {signed ? (
-              <Button look="quiet" onPress={onWithdraw}>
-                Withdraw my sign-off
-              </Button>
-            ) : (
-              <Button look="act" onPress={onSign}>
-                Sign off {draft.title}
-              </Button>
-            )}
-          </div>
-        </div>
-      )}
-    </section>
-  )
-}
-
-function LockPlace({
-  draft,
-  onLock,
-}: {
-  draft: DraftAnswer
-  onLock: (order: { confirm: string; reason?: string }) => Promise<boolean>
-}) {
-  const [isAsking, setAsking] = useState(false)
-  const [confirm, setConfirm] = useState("")
-  const [reason, setReason] = useState("")
-  const open = [
-    ...(draft.waitingFor.length > 0
-      ? [`not signed off: ${draft.waitingFor.map(({ name }) => name).join(", ")}`]
-      : []),
-    ...(draft.openMustSettle > 0 ? [`threads to settle: ${draft.openMustSettle}`] : []),
-  ]
-  const unready = draft.figures.filter((figure) => !figure.ready)
-  const lock = async () => {
-    const done = await onLock({ confirm, ...(reason.trim() ? { reason } : {}) })
-    if (done) setAsking(false)
-  }
-  return (
-    <section className="grid gap-2">
-      <h2 className="label m-0">Lock</h2>
-      <p className="m-0">
-        At submission the draft, its figure versions and their data are frozen for good, in the database
-        itself.
-      </p>
-      {open.map((point) => (
-        <MarginNote key={point} weight="caution">
-          {point}
-        </MarginNote>
-      ))}
-      {unready.length > 0 && (
-        <MarginNote weight="wrong">
-          No proof yet: {unready.map((figure) => figure.figureName).join(", ")}.
-        </MarginNote>
-      )}
-      <div>
-        <Button look="grave" isDisabled={unready.length > 0} onPress={() => setAsking(true)}>
-          Lock {draft.title}
-        </Button>
-      </div>
-      <GraveDialog title={`Lock ${draft.title}`} isOpen={isAsking} onClose={() => setAsking(false)}>
-        <form
-          className="grid gap-4"
-          onSubmit={(event) => {
-            event.preventDefault()
-            void lock()
-          }}
-        >
-          <p className="m-0 font-serif">
-            {draft.figures.length} {draft.figures.length === 1 ? "figure" : "figures"}, digest{" "}
-            <span className="font-mono">{draft.digest?.slice(0, 16)}</span>. Nobody can undo this; changes
-            need the next draft.
-          </p>
-          {open.length > 0 && (
-            <TextArea
-              label="Why lock although not everything is settled"
-              hint={open.join("; ")}
-              value={reason}
-              onChange={(event) => setReason(event.target.value)}
-            />
-          )}
-          <Field
-            label={`Type “${draft.title}” to confirm`}
-            value={confirm}
-            autoComplete="off"
-            onChange={(event) => setConfirm(event.target.value)}
-          />
-          <div>
-            <Button
-              look="grave"
-              type="submit"
-              isDisabled={confirm.trim() !== draft.title || (open.length > 0 && reason.trim() === "")}
-            >
-              Lock {draft.title} for good
-            </Button>
-          </div>
-        </form>
-      </GraveDialog>
-    </section>
-  )
-}
-
-function BundlePlace({ draft, address }: { draft: DraftAnswer; address: string }) {
-  const { bundle } = draft
-  return (
-    <section className="grid gap-2">
-      <h2 className="label m-0">Bundle</h2>
-      {bundle?.state === "done" ? (
-        <>
-          <p className="m-0">
-            Artwork, captions, macros, data, specs and results with their checksums,{" "}
-            {((bundle.size ?? 0) / 1e6).toFixed(1)} MB. Anyone can verify it without this product’s database.
-          </p>
-          <div>
-            <ButtonLink look="act" href={address} download>
-              Download the bundle
-            </ButtonLink>
-          </div>
-          <p className="m-0 break-all text-soft">
-            SHA-256 <span className="font-mono">{bundle.sha256}</span>
-          </p>
-        </>
-      ) : bundle?.state === "failed" ? (
-        <MarginNote weight="wrong">{bundle.failure}</MarginNote>
-      ) : (
-        <ProgressLine what="Making the bundle" />
-      )}
-    </section>
   )
 }
