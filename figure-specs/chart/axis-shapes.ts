@@ -54,6 +54,25 @@ export function frameShape(axes: PanelDrawing["axes"], size: FrameSize, look: Lo
   return { type: "path", d, fill: null, stroke: ink, widthPt: look.frameWidthPt }
 }
 
+/** The factor of an axis: beyond the right end of its numbers below, above the frame elsewhere. */
+function factorText(
+  { factor }: AxisDrawing,
+  side: Side,
+  { widthPt, heightPt }: FrameSize,
+  { smallPt }: Look,
+  toBaseline: number,
+): readonly TextShape[] {
+  if (!factor) return []
+  const place = {
+    bottom: { x: widthPt, y: heightPt + toBaseline + 1.25 * smallPt, align: "right" },
+    left: { x: 0, y: -0.4 * smallPt, align: "left" },
+    right: { x: widthPt, y: -0.4 * smallPt, align: "right" },
+    top: { x: widthPt, y: -toBaseline - 1.25 * smallPt, align: "right" },
+  } as const
+  const style = { type: "text", baseline: "alphabetic", angle: 0, color: ink, bold: false } as const
+  return [{ ...style, ...place[side], text: factor, fontPt: smallPt }]
+}
+
 /** Numbers and title of an axis on one side of the frame, outside it. */
 export function axisTexts(
   axis: AxisDrawing,
@@ -86,7 +105,8 @@ export function axisTexts(
     const align = side === "left" ? "right" : "left"
     return { ...number, text: label, x, y: heightPt * (1 - at), align, baseline: "middle" }
   })
-  if (axis.title === "") return texts
+  const factor = factorText(axis, side, { widthPt, heightPt }, look, gap + highest)
+  if (axis.title === "") return [...texts, ...factor]
   const numbers = labelled.length > 0
   const high = title.heightEm * fontPt
   const deep = title.depthEm * fontPt
@@ -94,9 +114,9 @@ export function axisTexts(
   if (horizontal) {
     const below = heightPt + (numbers ? gap + highest + deepest * 0.5 : 0) + toTitle + high
     const above = -(numbers ? gap + deepest + highest : 0) - toTitle - deep
-    return [...texts, { ...titled, x: widthPt / 2, y: side === "bottom" ? below : above }]
+    return [...texts, ...factor, { ...titled, x: widthPt / 2, y: side === "bottom" ? below : above }]
   }
   const beside = (numbers ? gap + widest : 0) + toTitle
   const x = side === "left" ? -beside - deep : widthPt + beside + high
-  return [...texts, { ...titled, x, y: heightPt / 2, angle: -90 }]
+  return [...texts, ...factor, { ...titled, x, y: heightPt / 2, angle: -90 }]
 }

@@ -1,7 +1,7 @@
 import type { AxisDrawing, Look, ScaleType } from "./drawing"
 import { linearTicks } from "./linear-ticks"
 import { logTicks } from "./log-ticks"
-import { estimateWidthEm } from "./number-label"
+import { estimateWidthEm, powerOfTen } from "./number-label"
 
 interface AxisWish {
   readonly title: string
@@ -18,10 +18,13 @@ export function axisOf({ title, scale, domain, direction, lengthPt, look }: Axis
     const size = direction === "horizontal" ? estimateWidthEm(label) * look.smallPt : look.smallPt
     return Math.floor(lengthPt / (size + look.labelGapPt)) + 1
   }
-  if (scale === "log") return { title, scale, domain, ...logTicks(domain, room, lengthPt) }
-  const { major, minor, power } = linearTicks(domain, room)
-  const scaled = power === 0 ? title : `${title} $\\times10^{${-power}}$`.trim()
-  return { title: scaled, scale, domain, major, minor }
+  const {
+    major,
+    minor,
+    power = 0,
+  } = scale === "log" ? logTicks(domain, room, lengthPt) : linearTicks(domain, room)
+  const factor = power === 0 ? {} : { factor: `×\u2009${powerOfTen(power)}` }
+  return { title, scale, domain, major, minor, ...factor }
 }
 
 /** Moves an end to the power of ten beside it, if that is close and still leaves the outermost value some air. */

@@ -76,6 +76,8 @@ export interface AxisDrawing {
   /** Major ticks, increasing; an empty label is a tick without number. */
   readonly major: readonly { readonly value: number; readonly label: string }[]
   readonly minor: readonly number[]
+  /** What all its numbers are to be multiplied with, set once at its end. */
+  readonly factor?: string
 }
 
 /** A place for a text: a point of the frame (points, from its top left) and how the text hangs on it. */

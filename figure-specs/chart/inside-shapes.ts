@@ -1,4 +1,4 @@
-import type { Frame, FrameLabel, PanelDrawing } from "./drawing"
+import type { Frame, FrameLabel, Legend, PanelDrawing } from "./drawing"
 import { annotationShapes } from "./annotation-shapes"
 import { freePlace, inkInside, type Ink } from "./free-place"
 import { legendShapes } from "./legend-shapes"
@@ -52,6 +52,18 @@ function placeLabel(label: FrameLabel, ink: Ink, frame: Frame, measure: MeasureL
   return { ...best.text, x: best.text.x + dx, y: best.text.y + dy }
 }
 
+/** A legend at the freest place of the frame: in one column if that is clear of data, in two or three otherwise. */
+function placeLegend(legend: Legend, ink: Ink, frame: Frame, measure: MeasureLabel) {
+  const { look } = frame
+  const inset = look.tickLengthPt + 0.35 * look.smallPt
+  const tried = [1, 2, 3].map((columns) => {
+    const size = legendShapes(legend, look, measure, { x: 0, y: 0 }, columns)
+    return { columns, ...freePlace(ink, frame, size, inset) }
+  })
+  const best = tried.reduce((least, one) => (one.covered < least.covered ? one : least))
+  return { ...legendShapes(legend, look, measure, best, best.columns), covered: best.covered }
+}
+
 export interface InsideShapes {
   readonly shapes: readonly Shape[]
   /** Whether the frame had no place for the legend that is free of data. */
@@ -81,13 +93,7 @@ export function insideShapes(
     taken.push(...shapeInk(text, measure))
   }
   if (!withLegend || drawing.legend.entries.length === 0) return { shapes, legendCoversData: false }
-  const { look } = frame
-  const place = freePlace(
-    taken,
-    frame,
-    legendShapes(drawing.legend, look, measure),
-    look.tickLengthPt + 0.35 * look.smallPt,
-  )
-  shapes.push(...legendShapes(drawing.legend, look, measure, place).shapes)
-  return { shapes, legendCoversData: place.covered > 0 }
+  const legend = placeLegend(drawing.legend, taken, frame, measure)
+  shapes.push(...legend.shapes)
+  return { shapes, legendCoversData: legend.covered > 0 }
 }

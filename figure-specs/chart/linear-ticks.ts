@@ -25,13 +25,10 @@ const tidy = (value: number): number => Number(value.toPrecision(12))
  * @param domain lower and upper end, increasing
  * @param room how many labels of the given text fit along the axis
  */
-export function linearTicks(
-  domain: readonly [number, number],
-  room: (label: string) => number,
-): Ticks & { readonly power: number } {
+export function linearTicks(domain: readonly [number, number], room: (label: string) => number): Ticks {
   const span = domain[1] - domain[0]
   const largest = Math.max(Math.abs(domain[0]), Math.abs(domain[1]))
-  // Numbers of many digits are written in units of a power of ten, which goes to the axis title.
+  // Numbers of many digits are written in units of a power of ten, which stands once at the end of the axis.
   const order = Math.floor(Math.log10(largest))
   const power = order >= 5 || order <= -4 ? order : 0
   let count = 8

@@ -1,5 +1,5 @@
-import { multiplesIn, niceStep } from "./linear-ticks"
-import { mantissaNumber, plainNumber, powerOfTen } from "./number-label"
+import { linearTicks } from "./linear-ticks"
+import { mantissaNumber, powerOfTen } from "./number-label"
 import type { Ticks } from "./ticks"
 
 const slack = 1e-9
@@ -61,10 +61,5 @@ export function logTicks(
     const taken = new Set(major.map(({ value }) => value))
     return { major, minor: allMinor.filter((value) => !taken.has(value)) }
   }
-  const step = niceStep((domain[1] - domain[0]) / 4)
-  const digits = Math.max(0, -Math.floor(Math.log10(step) + slack))
-  return {
-    major: multiplesIn(domain, step).map((value) => ({ value, label: plainNumber(value, digits) })),
-    minor: [],
-  }
+  return linearTicks(domain, room)
 }

@@ -77,7 +77,7 @@ describe("linear ticks", () => {
       lengthPt: 120,
       look: defaultLook,
     })
-    expect(axis.title).toBe("$N$ $\\times10^{-5}$")
+    expect([axis.title, axis.factor]).toEqual(["$N$", "×\u2009$10^{5}$"])
   })
 })
 

@@ -7,7 +7,7 @@ import type { PanelResult } from "@specs/figure-kind"
 import type { FigureSpec } from "@specs/figure-spec"
 import type { AnyKind } from "@specs/kinds"
 import type { PanelParams } from "@specs/registry"
-import { SpecError } from "@specs/spec-error"
+import { SpecError, type SpecIssue } from "@specs/spec-error"
 import { gridFrames, type FrameRect } from "./grid-frames"
 import { pointsPerMm } from "./outer-svg"
 import { isGridPanel, isInset, type GridPanel, type InsetPanel, type Panel } from "./panel-places"
@@ -97,11 +97,31 @@ function tooSmall(pointer: string, rect: FrameRect, whole: string): SpecError {
   return new SpecError([{ pointer, code: "figure-too-small", message }])
 }
 
+/** The issue of a title that is longer than the page, if one is why there is no room. */
+function tooLong(
+  texts: readonly (readonly TextShape[])[],
+  numbered: readonly Numbered[],
+  page: { readonly width: number; readonly height: number },
+  measure: MeasureLabel,
+): SpecError | null {
+  const issues = texts.flatMap((around, k) =>
+    around.flatMap((text): SpecIssue[] => {
+      const length = measure(text.text, text.bold).widthEm * text.fontPt
+      const room = text.angle === 0 ? page.width : page.height
+      if (length <= room) return []
+      const where = text.angle === 0 ? "axes/x/label" : "axes/y/label"
+      const message = `This text is ${Math.round(length / pointsPerMm)} mm long; the figure has ${Math.round(room / pointsPerMm)} mm.`
+      return [{ pointer: `/panels/${numbered[k]!.index}/${where}`, code: "label-too-long", message }]
+    }),
+  )
+  return issues.length > 0 ? new SpecError(issues) : null
+}
+
 /**
  * Finds frames and drawings that agree: margins follow from labels, labels from ticks, ticks from the frames. Two rounds
  * settle all but odd cases; margins that still change after that are taken as they are.
  *
- * @throws SpecError figure-too-small
+ * @throws SpecError figure-too-small, label-too-long
  */
 export function layOutGrid(setting: Setting): readonly LaidPanel[] {
   const { spec, looks, measure } = setting
@@ -113,18 +133,19 @@ export function layOutGrid(setting: Setting): readonly LaidPanel[] {
     rows: spec.grid.shareX ? 0.5 * gapPt : 0.8 * gapPt,
   }
   let margins: readonly Margins[] = numbered.map(() => firstMargins)
+  let texts: readonly (readonly TextShape[])[] = []
   for (let round = 0; ; round += 1) {
     const placed = numbered.map(({ panel }, k) => ({ ...panel.place, margins: margins[k]! }))
     const rects = gridFrames(placed, spec.grid, page, { edge, gaps })
     const cramped = rects.find((rect) => !hasRoom(rect))
-    if (cramped) throw tooSmall("/size", cramped, "figure")
+    if (cramped) throw tooLong(texts, numbered, page, measure) ?? tooSmall("/size", cramped, "figure")
     const frames = rects.map(({ width, height }, k): Frame => ({
       widthPt: width,
       heightPt: height,
       look: looks[numbered[k]!.index]!,
     }))
     const drawings = drawGrid(setting, numbered, frames)
-    const texts = drawings.map((drawing, k) => {
+    texts = drawings.map((drawing, k) => {
       const around = surroundingTexts(drawing, frames[k]!, measure)
       return [...around, ...titleText(numbered[k]!.panel.title, drawing, around, frames[k]!, measure)]
     })

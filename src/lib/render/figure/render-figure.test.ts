@@ -142,6 +142,13 @@ describe("a figure that cannot be drawn says why and where", () => {
     })
   })
 
+  test("a title longer than the page", async () => {
+    const spec = single({ axes: { x: { label: "a very long title ".repeat(8) }, y: {} } })
+    await expect(renderFigure(spec, [handMadeResult(1)])).rejects.toMatchObject({
+      issues: [{ pointer: "/panels/0/axes/x/label", code: "label-too-long" }],
+    })
+  })
+
   test("two panels in one place", async () => {
     const { spec } = exampleFigure({ panels: [decayPanel(), decayPanel()] })
     await expect(renderFigure(spec, [handMadeResult(1), handMadeResult(1)])).rejects.toMatchObject({

@@ -34,7 +34,7 @@ export function withSharedDomains(
   }))
 }
 
-const bare = (axis: AxisDrawing): AxisDrawing => ({
+const bare = ({ factor: _factor, ...axis }: AxisDrawing): AxisDrawing => ({
   ...axis,
   title: "",
   major: axis.major.map(({ value }) => ({ value, label: "" })),
