@@ -144,6 +144,10 @@ export const warningCatalogue = {
     severity: "caution",
     sentence: "The arrival times bend: one velocity does not describe the front over these positions.",
   },
+  COLLAPSE_POOR: {
+    severity: "caution",
+    sentence: "The curves do not fall onto one another within their errors (S = {quality}).",
+  },
   NONLINEAR_ERRORS: {
     severity: "note",
     sentence:
