@@ -1,6 +1,7 @@
 import type { OrderFacts } from "../columns/order-watch"
 import type { ColumnSummary } from "../columns/output-column"
 import type { ArrayAxis, ColumnKind, ColumnRole } from "../table-reading"
+import { isTrajectoryName } from "./trajectory-names"
 import { isTimeName, timeRank } from "./time-names"
 
 export interface RoleCandidate {
@@ -20,8 +21,6 @@ export interface ProposedRole {
   readonly uncertaintyOf: string | null
 }
 
-const TRAJECTORY =
-  /^(traj(ectory|ectories)?|sample|run|seed|reali[sz]ation|replica|shot|walker|copy)([_ ]?(id|no|nr|num|number|index|idx))?$/i
 const COORDINATE = /^(x|site|position|pos|k|q|distance|lag)$/i
 const WEIGHT = /^weights?$/i
 const ERROR_SUFFIX = /[ _.-]?(err|error|std|sd|sem|sigma|unc|stderr|se)$/i
@@ -46,7 +45,7 @@ export function proposeRoles(columns: readonly RoleCandidate[]): ProposedRole[] 
       }
     if (index === time) return said("time", "Called so, and its values rise.")
     if (base) return { ...said("uncertainty", `Named as the error of “${base}”.`), uncertaintyOf: base }
-    if (TRAJECTORY.test(column.name) && (column.facts.integers || column.kind === "text"))
+    if (isTrajectoryName(column.name) && (column.facts.integers || column.kind === "text"))
       return said("trajectory", "Called so, and holds integers or labels.")
     if (WEIGHT.test(column.name) && column.kind === "number") return said("weight", "Called so.")
     return null

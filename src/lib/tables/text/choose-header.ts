@@ -1,5 +1,5 @@
 import { type CellStyle, readCell } from "../numbers/read-cell"
-import { isUnit } from "../names/unit-grammar"
+import { isKnownUnit, isUnit } from "../names/unit-grammar"
 import type { Delimiter } from "../reading-recipe"
 import { countCell, fieldKind, noCounts } from "./column-evidence"
 import { isMetadata } from "./metadata-line"
@@ -142,7 +142,7 @@ function withUnits(header: HeaderChoice, body: readonly SampleRow[], context: Co
   const numeric = numericColumns(below, context)
   const empty = (text: string) => text === "" || text === "-"
   const fits = row.fields.every(({ text }) => empty(text) || isUnit(text))
-  const says = numeric.some((column) => !empty(row.fields[column]!.text))
+  const says = numeric.some((column) => isKnownUnit(row.fields[column]!.text))
   if (!fits || !says || hasNumber(row.fields, context)) return header
   return { ...header, units: unitsOf(row), unitsLine: row.line }
 }

@@ -155,6 +155,7 @@ function finish(attempt: Attempt, survey: TextSurvey, context: ReadContext): Tab
         .join(", "),
     })
   reportText(attempt, survey)
+  watch.finish()
   const columns = finishColumns(outputs, (index) => watch.factsOf(index), journal)
   return {
     format: "text",

@@ -143,7 +143,7 @@ function reportComments({ decision, reader, journal }: Attempt): void {
         { label: `Rows of ${plan.fields.length} columns`, recipe: { fields: plan.fields.length } },
         ...[...segments.foreignBlocks].slice(0, 20).map(([block, fields]) => ({
           label: `Block ${block}, of ${fields} columns`,
-          recipe: { block, fields, headerLines: [] },
+          recipe: { block, fields, headerLines: [], segments: null, columns: null },
         })),
       ],
     )
