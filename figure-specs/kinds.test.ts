@@ -43,7 +43,7 @@ const roles: Record<string, string> = {
   n: "observable",
   w2: "observable",
   rho: "observable",
-  tau: "observable",
+  tau_m: "observable",
   S: "observable",
   n_k: "observable",
 }

@@ -1,3 +1,4 @@
+import { characteristicTime } from "./characteristic-time"
 import { decayExponent } from "./decay-exponent"
 import { ensembleTrace } from "./ensemble-trace"
 import { finiteTimeDivergence } from "./finite-time-divergence"
@@ -8,6 +9,7 @@ import type { PanelParams } from "./registry"
 const kinds = {
   "decay-exponent": decayExponent,
   "ensemble-trace": ensembleTrace,
+  "characteristic-time": characteristicTime,
   "finite-time-divergence": finiteTimeDivergence,
 } satisfies Record<PanelParams["kind"], object>
 

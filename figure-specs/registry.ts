@@ -1,4 +1,5 @@
 import { z } from "zod"
+import { characteristicTimeParams } from "./characteristic-time/params"
 import { decayExponentParams } from "./decay-exponent/params"
 import { ensembleTraceParams } from "./ensemble-trace/params"
 import { finiteTimeDivergenceParams } from "./finite-time-divergence/params"
@@ -7,6 +8,7 @@ import { finiteTimeDivergenceParams } from "./finite-time-divergence/params"
 export const panelParams = z.discriminatedUnion("kind", [
   decayExponentParams,
   ensembleTraceParams,
+  characteristicTimeParams,
   finiteTimeDivergenceParams,
 ])
 export type PanelParams = z.infer<typeof panelParams>

@@ -21,7 +21,7 @@ const described = ({ name, unit, symbol }: TableColumn): DescribedColumn => ({ n
 export function describeColumns(
   { columns, curveBy }: BoundData,
   normalised: boolean,
-  axis: "time" | "coordinate" = "time",
+  axis: "time" | "coordinate" | "parameter" = "time",
 ): DescribedColumns {
   return {
     abscissa: described(columns.get(axis)!),

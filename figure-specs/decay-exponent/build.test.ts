@@ -2,7 +2,7 @@ import { describe, expect, test } from "vitest"
 import { defaultLook } from "../chart/look"
 import type { Frame } from "../chart/drawing"
 import { build } from "./build"
-import { handMadeResult } from "./hand-made-result"
+import { handMadeResult } from "@tests/support/hand-made-result"
 import { decayExponentParams } from "./params"
 
 const params = (changes: object = {}) =>

@@ -15,7 +15,7 @@ const intervalWords: Readonly<Record<Interval["type"], string>> = {
   basic: "basic bootstrap over trajectories",
   bca: "bias-corrected and accelerated bootstrap over trajectories",
   studentized: "studentized bootstrap over trajectories",
-  analytic: "given errors",
+  analytic: "standard errors of the points",
   "parametric-bootstrap": "parametric bootstrap",
 }
 

@@ -19,6 +19,9 @@ export interface DataFile {
   readonly recipe: string | null
 }
 
+/** Lines about one file, beyond which nobody reads. */
+const mostTold = 10
+
 /**
  * Reads a data file whole.
  *
@@ -48,7 +51,9 @@ export async function readData(
       stopping.map(({ code, message }) => ({ pointer: `/data/${name}`, code, message })),
     )
   }
-  for (const { message } of reading.problems) tell(`${name}: ${message}`)
+  for (const { message } of reading.problems.slice(0, mostTold)) tell(`${name}: ${message}`)
+  const untold = reading.problemCounts.reduce((sum, { count }) => sum + count, 0) - mostTold
+  if (untold > 0) tell(`${name}: And ${untold} more; npm run table lists them.`)
   return { rows: reading.rows, columns: collected.columns() }
 }
 

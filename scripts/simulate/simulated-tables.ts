@@ -88,7 +88,7 @@ function meeting(share = 1): SimulatedTable {
       Number(time.toPrecision(8)),
     ]),
   )
-  return tableOf(["run", "L", "tau [1/J]"], rows)
+  return tableOf(["run", "L", "tau_m [1/J]"], rows)
 }
 
 /** Mean size of merging clusters of 400 000 particles on the way to their divergence, 40 trajectories. */
