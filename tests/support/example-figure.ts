@@ -1,4 +1,4 @@
-import { handMadeResult } from "@specs/decay-exponent/hand-made-result"
+import { handMadeResult } from "@tests/support/hand-made-result"
 import { figureSpec, type FigureSpecInput } from "@specs/figure-spec"
 
 /** A decay panel as a spec says it, with changes. */

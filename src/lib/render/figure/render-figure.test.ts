@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest"
-import { handMadeResult } from "@specs/decay-exponent/hand-made-result"
+import { handMadeResult } from "@tests/support/hand-made-result"
 import { figureSpec } from "@specs/figure-spec"
 import { decayPanel, exampleFigure } from "@tests/support/example-figure"
 import { parseTransform } from "../svg/matrix"
