@@ -7,6 +7,7 @@ import * as review from "./2026-12-01-5-review"
 import * as submission from "./2026-12-01-6-submission"
 import * as record from "./2026-12-01-7-record"
 import * as guards from "./2026-12-01-8-guards"
+import * as draftRecord from "./2026-12-02-1-draft-record"
 
 /** In order of their names; imported by hand so that a bundled program carries them. */
 export const migrations: Record<string, Migration> = {
@@ -18,4 +19,5 @@ export const migrations: Record<string, Migration> = {
   "2026-12-01-6-submission": submission,
   "2026-12-01-7-record": record,
   "2026-12-01-8-guards": guards,
+  "2026-12-02-1-draft-record": draftRecord,
 }

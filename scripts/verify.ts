@@ -1,5 +1,5 @@
-import { readFile } from "node:fs/promises"
-import { verifyBundle } from "../src/lib/bundle/verify-bundle"
+import { access } from "node:fs/promises"
+import { verifyBundle } from "@/lib/bundle/verify-bundle"
 
 /** `npm run --silent verify -- bundle.zip`: the report as JSON; exit code 1 when anything does not hold. */
 const [file, ...rest] = process.argv.slice(2)
@@ -8,8 +8,9 @@ if (!file || rest.length > 0) {
   process.exitCode = 2
 } else {
   try {
-    const report = await verifyBundle(await readFile(file), (item) => {
-      if (!item.ok) console.error(`✗ ${item.item}: ${item.detail}`)
+    await access(file)
+    const report = await verifyBundle(file, ({ item, ok, detail }) => {
+      if (!ok) console.error(`✗ ${item}: ${detail}`)
     })
     process.stdout.write(`${JSON.stringify(report, null, 2)}\n`)
     process.exitCode = report.ok ? 0 : 1

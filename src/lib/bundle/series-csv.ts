@@ -36,7 +36,13 @@ export function seriesSchema(series: DrawnSeries): object {
 
 const slug = (text: string) => text.replace(/[^A-Za-z0-9.+-]+/g, "_")
 
-/** File name of a series, without ending: panel-1-mean, panel-1-fit-gamma_0.1. */
-export function seriesName(panel: number, series: DrawnSeries): string {
-  return `panel-${panel + 1}-${slug(series.name)}${series.curve === null ? "" : `-${slug(String(series.curve))}`}`
+/** File names of a panel's series, without ending and all different: panel-1-mean, panel-1-fit-0.1. */
+export function seriesNames(panel: number, all: readonly DrawnSeries[]): readonly string[] {
+  const taken = new Map<string, number>()
+  return all.map(({ name, curve }) => {
+    const base = `panel-${panel + 1}-${slug(name)}${curve === null ? "" : `-${slug(String(curve))}`}`
+    const count = (taken.get(base) ?? 0) + 1
+    taken.set(base, count)
+    return count === 1 ? base : `${base}_${count}`
+  })
 }

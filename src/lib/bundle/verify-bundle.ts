@@ -1,174 +1,185 @@
 import { createHash } from "node:crypto"
+import { createReadStream } from "node:fs"
+import { mkdtemp, readFile, rm, writeFile } from "node:fs/promises"
+import os from "node:os"
+import path from "node:path"
 import { canonicalJson } from "@/lib/domain/canonical-json"
 import { draftContent } from "@/lib/domain/draft-digest"
-import { renderFigure, svgToPdf, svgToPng } from "@/lib/render"
-import { bytesSource, collectColumns, parseRecipe, readTable } from "@/lib/tables"
-import { computeFigure } from "@specs/compute-figure"
-import type { DataTable } from "@specs/figure-kind"
-import { figureSpec } from "@specs/figure-spec"
-import { resultsDocument } from "@specs/results-document"
-import type { BundledDataset } from "./bundle-content"
-import { checkBag, type CheckItem, unpack } from "./read-bag"
+import { renderingVersions } from "@/lib/render"
+import { bundleFiles } from "./bundle-files"
+import { originalPath } from "./bundle-paths"
+import { checkArchive } from "./check-archive"
+import { type AddItem, checkBag, type CheckItem } from "./check-bag"
+import { checkFigure, keptFigure, payloadReader } from "./check-figure"
+import { type BundleContent, bundleRecord, type RecordOfBundle } from "./draft-record"
+import { softwareVersion } from "./software-version"
+import { tableCache } from "./table-cache"
+import { BagError, unpackBag, type UnpackedBag } from "./unpack-bag"
 
 export interface VerificationReport {
+  /** Nothing fails. What another version made, and only it can compare byte by byte, is counted apart. */
   readonly ok: boolean
   readonly checked: number
   readonly failed: number
+  readonly notCompared: number
   readonly items: readonly CheckItem[]
 }
 
-interface DraftRecord {
-  readonly format: string
-  readonly formatVersion: number
-  readonly manuscript: { readonly title: string }
-  readonly draft: { readonly digest: string }
-  readonly figures: readonly {
-    readonly name: string
-    readonly caption: string
-    readonly folder: string
-    readonly inputs: readonly { readonly dataset: string; readonly sha256: string; readonly folder: string }[]
-    readonly artwork: readonly { readonly format: string; readonly dpi: number | null }[]
-  }[]
-}
-
-const sha256 = (bytes: Uint8Array | string) => createHash("sha256").update(bytes).digest("hex")
-const decode = (bytes: Uint8Array) => new TextDecoder().decode(bytes)
-const same = (a: Uint8Array, b: Uint8Array) => a.length === b.length && a.every((byte, at) => byte === b[at])
-
 /**
- * Verifies a bundle from its own bytes alone: every checksum, the digest, and for every figure the original files read
- * again, the numbers computed again, the artwork drawn again, all compared byte for byte.
+ * Verifies a bundle from its own bytes alone: every checksum; the digest that was signed; every number computed and every
+ * figure drawn again from the original files; every other file, and the archive itself, made again and compared.
  *
- * @param zip the bundle
+ * @param bundle its path, or its bytes
  * @param onItem called with each finding as it is made
  */
 export async function verifyBundle(
-  zip: Uint8Array,
+  bundle: string | Uint8Array,
   onItem?: (item: CheckItem) => void,
 ): Promise<VerificationReport> {
   const items: CheckItem[] = []
-  const add = (item: string, ok: boolean, detail: string) => {
-    items.push({ item, ok, detail })
-    onItem?.({ item, ok, detail })
+  const add: AddItem = (item, outcome, detail) => {
+    const found = { item, ok: outcome !== "fails", outcome, detail }
+    items.push(found)
+    onItem?.(found)
   }
-  const files = unpack(zip)
-  if (files instanceof Error) add("bundle", false, `The archive cannot be read: ${files.message}`)
-  else {
-    for (const { item, ok, detail } of checkBag(files)) add(item, ok, detail)
-    const record = readRecord(files.get("data/draft.json"))
-    if (typeof record === "string") add("data/draft.json", false, record)
-    else {
-      checkDigest(files, record, add)
-      for (const figure of record.figures) await checkFigure(files, figure, add)
-    }
-  }
-  const failed = items.filter((item) => !item.ok).length
-  return { ok: failed === 0, checked: items.length, failed, items }
-}
-
-function readRecord(bytes: Uint8Array | undefined): DraftRecord | string {
-  if (!bytes) return "missing"
+  const folder = await mkdtemp(path.join(os.tmpdir(), "afterquench-verify-"))
   try {
-    const record = JSON.parse(decode(bytes)) as DraftRecord
-    if (record.format !== "afterquench-bundle") return "not the record of a bundle"
-    if (record.formatVersion !== 1) return `made by a newer version (format ${record.formatVersion})`
-    return record
+    const zip = typeof bundle === "string" ? bundle : path.join(folder, "bundle.zip")
+    if (typeof bundle !== "string") await writeFile(zip, bundle)
+    await verifyUnpacked(zip, await unpackBag(zip, folder), add)
   } catch (error) {
-    return `not JSON: ${(error as Error).message}`
+    if (!(error instanceof BagError)) throw error
+    add("archive", "fails", error.message)
+  } finally {
+    await rm(folder, { recursive: true, force: true })
+  }
+  const count = (outcome: CheckItem["outcome"]) => items.filter((item) => item.outcome === outcome).length
+  const failed = count("fails")
+  return { ok: failed === 0, checked: items.length, failed, notCompared: count("not-compared"), items }
+}
+
+async function verifyUnpacked(zip: string, bag: UnpackedBag, add: AddItem): Promise<void> {
+  const software = softwareVersion()
+  let anyFailed = false
+  const note: AddItem = (item, outcome, detail) => {
+    anyFailed ||= outcome === "fails"
+    add(item, outcome, detail)
+  }
+  const checksums = await checkBag(bag, note)
+  const record = await readRecord(bag, note)
+  if (!record) return
+  const content = await contentOf(bag, record, note)
+  if (!content) return
+  checkDigest(content, checksums, note)
+  const cache = tableCache(record, bag)
+  const own = canonicalJson({ rendering: renderingVersions(), lockfile: software.lockfileSha256 })
+  for (const [at, figure] of record.figures.entries()) {
+    const made = canonicalJson({ rendering: figure.rendering, lockfile: figure.software.lockfileSha256 })
+    await checkFigure(figure, at, content.figures[at]!, made === own, cache.tableOf, note)
+    cache.forgetAfter(at)
+  }
+  const isOwnBundle = record.software.lockfileSha256 === software.lockfileSha256
+  await checkOtherFiles(bag, content, isOwnBundle, note)
+  // Whatever fails above makes the archive differ too; that would be no news.
+  if (!anyFailed) await checkArchive(zip, content, software, isOwnBundle, note)
+}
+
+async function readRecord(bag: UnpackedBag, add: AddItem): Promise<RecordOfBundle | null> {
+  const item = "data/draft.json"
+  const file = bag.files.get(item)
+  const refuse = (detail: string) => {
+    add(item, "fails", detail)
+    return null
+  }
+  if (file === undefined) return refuse("missing: this is no bundle")
+  let json: unknown
+  try {
+    json = JSON.parse(await readFile(file, "utf8"))
+  } catch (error) {
+    return refuse(`not JSON: ${(error as Error).message}`)
+  }
+  const parsed = bundleRecord.safeParse(json)
+  if (parsed.success) return parsed.data
+  const [issue] = parsed.error.issues
+  return refuse(`not the record of a bundle of format 1: ${issue?.path.join("/")}: ${issue?.message}`)
+}
+
+/** What the bag says it holds, in the shape from which a bundle is made. */
+async function contentOf(
+  bag: UnpackedBag,
+  { software, ...record }: RecordOfBundle,
+  add: AddItem,
+): Promise<BundleContent | null> {
+  const read = payloadReader(bag.files)
+  try {
+    const figures = await Promise.all(record.figures.map((figure, at) => keptFigure(figure, at, read)))
+    return {
+      record,
+      software,
+      figures,
+      original: (dataset) => createReadStream(bag.files.get(`data/${originalPath(dataset)}`)!),
+    }
+  } catch (error) {
+    add("data/figures", "fails", (error as Error).message)
+    return null
   }
 }
 
-type Add = (item: string, ok: boolean, detail: string) => void
+const sha256 = (bytes: Uint8Array | string) => createHash("sha256").update(bytes).digest("hex")
 
-function checkDigest(files: ReadonlyMap<string, Uint8Array>, record: DraftRecord, add: Add): void {
-  const content = draftContent(
-    record.manuscript.title,
-    record.figures.map((figure) => ({
-      figure: figure.name,
-      caption: figure.caption,
-      specSha256: sha256(files.get(`data/${figure.folder}/spec.json`) ?? ""),
-      resultsSha256: sha256(files.get(`data/${figure.folder}/results.json`) ?? ""),
-      data: Object.fromEntries(figure.inputs.map((input) => [input.dataset, input.sha256])),
-    })),
-  )
-  const holds = sha256(content) === record.draft.digest
-  add(
-    "digest",
-    holds,
-    holds ? "covers exactly these figures" : "the figures are not the ones that were signed",
-  )
-}
-
-async function readInput(
-  files: ReadonlyMap<string, Uint8Array>,
-  folder: string,
-  expected: string,
-): Promise<DataTable> {
-  const described = files.get(`data/${folder}/reading.json`)
-  if (!described) throw new Error(`${folder}/reading.json is missing`)
-  const { fileName, recipe, columns } = JSON.parse(decode(described)) as Pick<
-    BundledDataset,
-    "fileName" | "recipe" | "columns"
-  >
-  const original = files.get(`data/${folder}/${fileName}`)
-  if (!original) throw new Error(`${folder}/${fileName} is missing`)
-  if (sha256(original) !== expected) throw new Error(`${folder}/${fileName} is not the file that was pinned`)
-  const collected = collectColumns()
-  const reading = await readTable(
-    bytesSource(fileName, original),
-    { recipe: parseRecipe(recipe) },
-    collected.sink,
-  )
-  if (reading.refused) throw new Error(`${folder}/${fileName}: ${reading.refused.message}`)
-  return {
-    rows: reading.rows,
-    // Names, units and symbols as they were accepted; values as they are read again.
-    columns: collected.columns().map((column, index) => {
-      const { name, unit, symbol } = columns.find((accepted) => accepted.index === index) ?? column
-      return { name, unit, symbol, values: column.values }
-    }),
+/** The digest covers title, captions, specs, numbers and data; all of them as they lie here. */
+function checkDigest(
+  { record, figures }: BundleContent,
+  checksums: ReadonlyMap<string, string>,
+  add: AddItem,
+): void {
+  for (const dataset of record.datasets) {
+    const found = checksums.get(`data/${originalPath(dataset)}`)
+    if (found !== dataset.sha256)
+      add(originalPath(dataset), "fails", found ? "is not the file that was pinned" : "is missing")
   }
+  const digest = sha256(
+    draftContent(
+      record.manuscript.title,
+      record.figures.map(({ name, caption, inputs }, at) => ({
+        figure: name,
+        caption,
+        specSha256: sha256(figures[at]!.spec),
+        resultsSha256: sha256(figures[at]!.results),
+        data: Object.fromEntries(inputs.map((input) => [input.dataset, input.sha256])),
+      })),
+    ),
+  )
+  if (digest === record.draft.digest) add("digest", "holds", "covers exactly these figures, numbers and data")
+  else add("digest", "fails", "what was signed and locked is something else than this")
 }
 
-async function checkFigure(
-  files: ReadonlyMap<string, Uint8Array>,
-  figure: DraftRecord["figures"][number],
-  add: Add,
+/** Everything in the payload that follows from the record, specs, results and series. */
+async function checkOtherFiles(
+  bag: UnpackedBag,
+  content: BundleContent,
+  isOwnBundle: boolean,
+  add: AddItem,
 ): Promise<void> {
-  const at = (name: string) => files.get(`data/${figure.folder}/${name}`)
-  const compare = (name: string, made: Uint8Array, what: string) => {
-    const kept = at(name)
-    const holds = kept !== undefined && same(kept, made)
-    add(
-      `${figure.folder}/${name}`,
-      holds,
-      holds ? `${what}, the same bytes` : `${what}, and it is not what the bundle holds`,
-    )
-  }
+  let expected: ReturnType<typeof bundleFiles>
   try {
-    const spec = figureSpec.parse(JSON.parse(decode(at("spec.json") ?? new Uint8Array())))
-    const tables = new Map<string, DataTable>()
-    for (const input of figure.inputs)
-      tables.set(input.dataset, await readInput(files, input.folder, input.sha256))
-    const results = computeFigure(spec, { tables })
-    const encode = (value: unknown) => new TextEncoder().encode(canonicalJson(value))
-    compare("results.json", encode(resultsDocument(results)), "recomputed from the original files")
-    compare(
-      "series.json",
-      encode(results.panels.map((panel) => panel.series)),
-      "recomputed from the original files",
-    )
-    const { svg } = await renderFigure(spec, results.panels)
-    const stem = `figure-${Number(/figures\/(\d+)-/.exec(`${figure.folder}`)?.[1] ?? 0)}`
-    for (const { format, dpi } of figure.artwork) {
-      if (format === "svg") compare(`${stem}.svg`, new TextEncoder().encode(svg), "drawn again")
-      else if (format === "png")
-        compare(`${stem}.png`, await svgToPng(svg, { dpi: dpi ?? 300 }), "drawn again")
-      else if (format === "pdf")
-        compare(`${stem}.pdf`, await svgToPdf(svg, { title: spec.title }), "drawn again")
-      else add(`${figure.folder}/${stem}.${format}`, false, `${format} is not redrawn by this version`)
-    }
+    expected = bundleFiles(content)
   } catch (error) {
-    add(figure.folder, false, `could not be recomputed: ${(error as Error).message}`)
+    add("data", "fails", `the bundle could not be made again: ${(error as Error).message}`)
+    return
+  }
+  const known = new Set(expected.map(({ path: name }) => `data/${name}`))
+  for (const name of bag.files.keys())
+    if (name.startsWith("data/") && !known.has(name)) add(name, "fails", "belongs to no figure or dataset")
+  for (const file of expected) {
+    if (!("bytes" in file)) continue
+    const kept = bag.files.get(`data/${file.path}`)
+    if (kept === undefined) add(file.path, "fails", "missing")
+    else if (Buffer.compare(await readFile(kept), file.bytes) !== 0)
+      add(
+        file.path,
+        isOwnBundle ? "fails" : "not-compared",
+        isOwnBundle ? "is not what follows from the record" : "written by another version of the product",
+      )
   }
 }

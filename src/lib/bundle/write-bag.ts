@@ -1,19 +1,30 @@
 import { createHash } from "node:crypto"
 import { Readable } from "node:stream"
 import { ZipFile } from "yazl"
-import type { BundleFile } from "./bundle-files"
+import { type BundleFile, bundleFiles } from "./bundle-files"
+import { bagName } from "./bundle-paths"
+import type { BundleContent } from "./draft-record"
 
 const sha256 = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex")
 
 /** In local time, because a ZIP writes local time: the same fields wherever it is made. */
 const fixedTime = new Date(1980, 0, 1)
-const options = { mtime: fixedTime, mode: 0o100644, forceDosTimestamp: true } as const
+const options = { mtime: fixedTime, mode: 0o100644, forceDosTimestamp: true, compress: true } as const
+
+/** What bag-info.txt says besides the number of bytes and files. */
+const bagInfo = ({ record, software }: BundleContent): Readonly<Record<string, string>> => ({
+  "Source-Organization": record.people.map((person) => person.name).join(", "),
+  "External-Description": `${record.manuscript.title}, ${record.draft.title}`,
+  "External-Identifier": record.draft.digest,
+  "Bagging-Date": record.draft.lockedAt.slice(0, 10),
+  "Bag-Software-Agent": `${software.name} ${software.version}`,
+})
 
 /** The tag files of a bag around its payload. @see RFC 8493, sections 2.1 and 2.2 */
-export function bagFiles(
+export function tagFiles(
   payload: readonly BundleFile[],
   info: Readonly<Record<string, string>>,
-): BundleFile[] {
+): readonly { readonly path: string; readonly bytes: Uint8Array }[] {
   const entries = payload.map((file) =>
     "bytes" in file
       ? { path: `data/${file.path}`, size: file.bytes.length, sha256: sha256(file.bytes) }
@@ -35,22 +46,25 @@ export function bagFiles(
 }
 
 /**
- * A bag as a ZIP: entries in order, fixed times and modes, so that the same content is the same bytes. Streamed: a file is
- * asked for its bytes when its turn comes.
+ * The bundle of a locked draft: a bag as a ZIP with one folder at its top, entries in order, fixed times and modes, so
+ * that the same content is the same bytes. Streamed: an original is asked for its bytes when its turn comes.
  */
-export function writeBag(
-  payload: readonly BundleFile[],
-  info: Readonly<Record<string, string>>,
-): AsyncIterable<Uint8Array> {
+export function writeBundle(content: BundleContent): AsyncIterable<Uint8Array> {
+  const payload = bundleFiles(content)
+  const folder = bagName(content.record)
   const zip = new ZipFile()
-  const inBag = payload.map((file) => ({ ...file, path: `data/${file.path}` }))
-  for (const file of [...bagFiles(payload, info), ...inBag]) {
-    if ("bytes" in file) zip.addBuffer(Buffer.from(file.bytes), file.path, { ...options, compress: true })
+  // A file that cannot be read ends the archive with its error, not the process.
+  zip.on("error", (error: Error) => (zip.outputStream as Readable).destroy(error))
+  for (const { path, bytes } of tagFiles(payload, bagInfo(content)))
+    zip.addBuffer(Buffer.from(bytes), `${folder}/${path}`, options)
+  for (const file of payload) {
+    const path = `${folder}/data/${file.path}`
+    if ("bytes" in file) zip.addBuffer(Buffer.from(file.bytes), path, options)
     else
-      zip.addReadStreamLazy(file.path, { ...options, compress: true, size: file.size }, (done) =>
+      zip.addReadStreamLazy(path, { ...options, size: file.size }, (done) =>
         done(null, Readable.from(file.stream())),
       )
   }
   zip.end()
-  return zip.outputStream as unknown as AsyncIterable<Uint8Array>
+  return zip.outputStream as Readable
 }

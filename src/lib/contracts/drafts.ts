@@ -2,6 +2,7 @@ import { z } from "zod"
 import { bundleStates, draftStates } from "@/lib/domain/states"
 import { defineContract } from "./contract"
 import { id, manuscriptParams, personName, timestamp } from "./fields"
+import { quantity } from "./figures"
 
 const draftParams = manuscriptParams.extend({ draftNumber: z.coerce.number().int().min(1) })
 const base = "/api/v1/manuscripts/{manuscriptId}/drafts"
@@ -39,6 +40,16 @@ export const draftAnswer = z.object({
   waitingFor: z.array(personName),
   /** Unresolved threads on pinned versions that must be settled. */
   openMustSettle: z.int(),
+  /** What stands before the lock: to be fixed, to be given a reason for, or to be known. Empty once it is locked. */
+  checks: z.array(
+    z.object({
+      code: z.string(),
+      weight: z.enum(["must-fix", "needs-reason", "caution"]),
+      message: z.string(),
+      /** Name of the figure it is about, or "draft". */
+      where: z.string(),
+    }),
+  ),
   lockedAt: timestamp.nullable(),
   lockedBy: personName.nullable(),
   lockReason: z.string().nullable(),
@@ -113,6 +124,40 @@ export const pinFigures = defineContract({
   headers: { ETag: "Revision for If-Match." },
 })
 
+export const draftQuantity = z.object({
+  quantity,
+  figureId: id,
+  figureName: z.string(),
+  version: z.int(),
+  /** Counted from 1. */
+  panel: z.int(),
+})
+export type DraftQuantity = z.output<typeof draftQuantity>
+
+export const listQuantities = defineContract({
+  id: "listQuantities",
+  method: "GET",
+  path: `${base}/{draftNumber}/quantities`,
+  summary: "The named numbers of the pinned figures, with the version each comes from.",
+  access: { who: "member", action: "draft.read" },
+  params: draftParams,
+  status: 200,
+  answer: z.object({ items: z.array(draftQuantity) }),
+})
+
+export const getValuesTex = defineContract({
+  id: "getValuesTex",
+  method: "GET",
+  path: `${base}/{draftNumber}/values.tex`,
+  summary: "The named numbers as TeX macros, plain or for the siunitx package.",
+  access: { who: "member", action: "draft.read" },
+  params: draftParams,
+  query: z.object({ form: z.enum(["plain", "siunitx"]).default("plain") }),
+  status: 200,
+  answer: "application/x-tex",
+  problems: ["conflict"],
+})
+
 const digest = z.string().regex(/^[0-9a-f]{64}$/, "A digest is 64 hexadecimal digits.")
 
 export const signOff = defineContract({
@@ -145,7 +190,7 @@ export const lockDraft = defineContract({
   method: "POST",
   path: `${base}/{draftNumber}/lock`,
   summary:
-    "Lock the draft, its figure versions and their data for good. With missing sign-offs or unsettled threads a reason is needed.",
+    "Lock the draft, its figure versions and their data for good. It is refused while a check must be fixed; checks that need a reason take one.",
   access: { who: "member", action: "draft.lock" },
   params: draftParams,
   body: z.object({ confirm: z.string(), digest, reason: z.string().trim().max(2000).optional() }).strict(),
@@ -172,6 +217,8 @@ export const draftContracts = [
   openDraft,
   getDraft,
   pinFigures,
+  listQuantities,
+  getValuesTex,
   signOff,
   withdrawSignOff,
   lockDraft,

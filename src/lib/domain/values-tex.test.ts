@@ -17,6 +17,11 @@ describe("values.tex", () => {
     expect(text).toContain("\\newcommand{\\alphaWeak}{\\ensuremath{-0.4964(24)}}")
     expect(text).toContain("% decay, version 3: -0.4964, 95 % [-0.501, -0.4918] jackknife-t")
   })
+  test("for siunitx the number with its bracket (siunitx manual, \\num{0.587(12)})", () => {
+    const sources = [{ quantity: quantity("alphaWeak"), figure: "decay", version: 3 }]
+    const text = valuesTex(sources, "Draft 1", "siunitx")
+    expect(text).toContain("\\newcommand{\\alphaWeak}{\\num{-0.4964(24)}}")
+  })
   test("names that TeX has, or that cannot be macros, are refused", () => {
     expect(texNameProblem("alpha")).toMatch(/means something in TeX/)
     expect(texNameProblem("alpha2")).toMatch(/letters only/)

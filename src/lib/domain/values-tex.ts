@@ -32,12 +32,25 @@ export interface QuantitySource {
   readonly version: number
 }
 
+/** How a macro writes its number: as TeX mathematics, or for the siunitx package. */
+export type ValuesForm = "plain" | "siunitx"
+
+/** siunitx reads a bracket; unequal sides, and what is no plain number, stay mathematics. */
+const bodyOf = ({ tex, text }: Quantity, form: ValuesForm) =>
+  form === "siunitx" && /^-?[\d.]+(\([\d.]+\))?(e-?\d+)?$/.test(text)
+    ? `\\num{${text}}`
+    : `\\ensuremath{${tex}}`
+
 /**
  * values.tex: a macro for every named quantity, `\name{}` in the text, with its interval and origin as a comment.
  *
  * @throws Error for a name that TeX has already, or that two quantities share
  */
-export function valuesTex(sources: readonly QuantitySource[], heading: string): string {
+export function valuesTex(
+  sources: readonly QuantitySource[],
+  heading: string,
+  form: ValuesForm = "plain",
+): string {
   const seen = new Map<string, QuantitySource>()
   const lines = sources.map((source) => {
     const { quantity, figure, version } = source
@@ -52,8 +65,9 @@ export function valuesTex(sources: readonly QuantitySource[], heading: string): 
       : ""
     return [
       `% ${escapeComment(`${figure}, version ${version}: ${quantity.value}${interval}`)}`,
-      `\\newcommand{\\${quantity.name}}{\\ensuremath{${quantity.tex}}}`,
+      `\\newcommand{\\${quantity.name}}{${bodyOf(quantity, form)}}`,
     ].join("\n")
   })
-  return `% ${escapeComment(heading)}\n% Use a macro in the text as \\name{}; the brackets hold one standard error.\n${lines.join("\n")}\n`
+  const needs = form === "siunitx" ? "% Needs \\usepackage{siunitx} before it.\n" : ""
+  return `% ${escapeComment(heading)}\n${needs}% Use a macro in the text as \\name{}; the brackets hold one standard error.\n${lines.join("\n")}\n`
 }

@@ -133,6 +133,7 @@ export interface Draft {
   lockReason: string | null;
   manuscriptId: string;
   number: number;
+  record: JsonColumn | null;
   revision: Generated<number>;
   state: Defaulted<DraftState>;
   title: string;

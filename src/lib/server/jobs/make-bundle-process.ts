@@ -1,5 +1,4 @@
-import { bundleFiles } from "@/lib/bundle/bundle-files"
-import { writeBag } from "@/lib/bundle/write-bag"
+import { writeBundle } from "@/lib/bundle/write-bag"
 import { closeDb, getDb } from "@/lib/server/db/client"
 import { storeBlob } from "@/lib/server/services/datasets/store-blob"
 import { bundleContent } from "@/lib/server/services/drafts/bundle-content"
@@ -18,14 +17,7 @@ async function main(): Promise<void> {
       .select("draftId")
       .where("id", "=", bundleId)
       .executeTakeFirstOrThrow()
-    const content = await bundleContent(db, draftId)
-    const pieces = writeBag(bundleFiles(content), {
-      "Source-Organization": content.people.map((person) => person.name).join(", "),
-      "External-Description": `${content.manuscript.title}, ${content.draft.title}`,
-      "External-Identifier": content.draft.digest,
-      "Bagging-Date": content.draft.lockedAt.slice(0, 10),
-      "Bag-Software-Agent": `${content.software.name} ${content.software.version}`,
-    })
+    const pieces = writeBundle(await bundleContent(db, draftId))
     await db.transaction().execute(async (trx) => {
       const blob = await storeBlob(trx, pieces, largestBundle)
       await trx

@@ -1,3 +1,4 @@
+import { bagName } from "@/lib/bundle/bundle-paths"
 import { Problem } from "@/lib/contracts/problems"
 import type { Db } from "@/lib/server/db/client"
 import { readBlob, streamOf } from "@/lib/server/services/datasets/read-blob"
@@ -9,7 +10,7 @@ export async function bundleBytes(db: Db, place: DraftPlace) {
   if (draft.state !== "locked") throw new Problem("conflict", "A bundle is made of a locked draft.")
   const bundle = await db
     .selectFrom("bundle")
-    .select(["blobId", "sha256", "size", "state", "failure"])
+    .select(["blobId", "sha256", "size", "failure"])
     .where("draftId", "=", draft.id)
     .orderBy("createdAt", "desc")
     .executeTakeFirst()
@@ -18,17 +19,9 @@ export async function bundleBytes(db: Db, place: DraftPlace) {
     throw new Problem("conflict", failure ?? "The bundle is being made; ask again in a moment.")
   }
   return {
-    name: `${slug(draft.manuscriptTitle)}-draft-${draft.number}.zip`,
+    name: `${bagName({ manuscript: { title: draft.manuscriptTitle }, draft: { number: draft.number } })}.zip`,
     sha256: bundle.sha256.toString("hex"),
     size: bundle.size,
     stream: streamOf(readBlob(db, bundle.blobId)),
   }
 }
-
-const slug = (title: string) =>
-  title
-    .normalize("NFKD")
-    .replace(/[^A-Za-z0-9]+/g, "-")
-    .replace(/^-+|-+$/g, "")
-    .toLowerCase()
-    .slice(0, 60) || "manuscript"

@@ -1,6 +1,8 @@
 import { createHash } from "node:crypto"
 import { draftContent } from "@/lib/domain/draft-digest"
 import type { Db } from "@/lib/server/db/client"
+import { newerVersionExists } from "@/lib/server/services/datasets/newer-version"
+import type { ResultsDocument } from "@specs/results-document"
 
 const hex = (bytes: Buffer) => bytes.toString("hex")
 
@@ -21,6 +23,7 @@ export async function pinnedFigures(db: Db, draftId: string) {
       "v.number as version",
       "v.specSha256",
       "result.sha256 as resultsSha256",
+      "result.document",
     ])
     .select((eb) =>
       eb
@@ -40,22 +43,24 @@ export async function pinnedFigures(db: Db, draftId: string) {
     .innerJoin("blob", "blob.id", "datasetVersion.blobId")
     .innerJoin("draftFigure as p", "p.figureVersionId", "i.figureVersionId")
     .select(["i.figureVersionId", "i.datasetName", "blob.sha256"])
+    .select((eb) => newerVersionExists(eb).as("isStale"))
     .where("p.draftId", "=", draftId)
     .execute()
-  return pins.map((pin) => ({
-    ...pin,
-    data: Object.fromEntries(
-      inputs
-        .filter((input) => input.figureVersionId === pin.figureVersionId)
-        .map((input) => [input.datasetName, hex(input.sha256)]),
-    ),
-  }))
+  return pins.map(({ document, ...pin }) => {
+    const own = inputs.filter((input) => input.figureVersionId === pin.figureVersionId)
+    return {
+      ...pin,
+      results: document && (JSON.parse(document.toString("utf8")) as ResultsDocument),
+      data: Object.fromEntries(own.map((input) => [input.datasetName, hex(input.sha256)])),
+      staleData: own.filter((input) => input.isStale).map((input) => input.datasetName),
+    }
+  })
 }
 
-type Pinned = Awaited<ReturnType<typeof pinnedFigures>>
+export type Pinned = Awaited<ReturnType<typeof pinnedFigures>>[number]
 
 /** SHA-256 of what is pinned, or null while nothing is. */
-export function digestOf(title: string, pins: Pinned): Buffer | null {
+export function digestOf(title: string, pins: readonly Pinned[]): Buffer | null {
   if (pins.length === 0) return null
   const content = draftContent(
     title,

@@ -1,15 +1,17 @@
+import type { DraftRecord } from "@/lib/bundle/draft-record"
 import { Problem } from "@/lib/contracts/problems"
+import { draftChecks } from "@/lib/domain/draft-checks"
 import type { BundleState, DraftState } from "@/lib/domain/states"
 import type { Db } from "@/lib/server/db/client"
 import { insertEvent } from "@/lib/server/db/events"
-import { digestOf, pinnedFigures } from "./draft-content"
+import { digestOf, type Pinned, pinnedFigures } from "./draft-content"
 
 export interface DraftPlace {
   readonly manuscriptId: string
   readonly draftNumber: number
 }
 
-/** The row of a draft. @throws Problem `not-found` */
+/** The row of a draft; the title of a locked one is the manuscript's as it was. @throws Problem `not-found` */
 export async function getDraftRow(db: Db, { manuscriptId, draftNumber }: DraftPlace) {
   const row = await db
     .selectFrom("draft")
@@ -20,8 +22,10 @@ export async function getDraftRow(db: Db, { manuscriptId, draftNumber }: DraftPl
       "draft.number",
       "draft.title",
       "draft.revision",
+      "draft.digest",
       "draft.lockedAt",
       "draft.lockReason",
+      "draft.record",
       "manuscript.title as manuscriptTitle",
       "person.id as lockerId",
       "person.name as lockerName",
@@ -31,7 +35,9 @@ export async function getDraftRow(db: Db, { manuscriptId, draftNumber }: DraftPl
     .where("draft.number", "=", draftNumber)
     .executeTakeFirst()
   if (!row) throw new Problem("not-found", `There is no draft ${draftNumber} of this manuscript.`)
-  return row
+  const { record, ...draft } = row
+  const locked = record as DraftRecord | null
+  return { ...draft, manuscriptTitle: locked?.manuscript.title ?? draft.manuscriptTitle }
 }
 
 /** Authors of a manuscript: whoever has to sign off. */
@@ -46,39 +52,63 @@ function authors(db: Db, manuscriptId: string) {
     .execute()
 }
 
-/** One draft: what it pins, who signed off, what stands before the lock. @throws Problem `not-found` */
-export async function getDraft(db: Db, place: DraftPlace) {
-  const { id, manuscriptTitle, lockerId, lockerName, ...row } = await getDraftRow(db, place)
-  const pins = await pinnedFigures(db, id)
-  const digest = digestOf(manuscriptTitle, pins)
+/** The latest sign-off of each person, newest first. */
+async function latestSignOffs(db: Db, draftId: string, digest: Buffer | null) {
   const signOffs = await db
     .selectFrom("signOff")
     .innerJoin("person", "person.id", "signOff.personId")
     .select(["person.id", "person.name", "signOff.digest", "signOff.createdAt"])
-    .where("signOff.draftId", "=", id)
+    .where("signOff.draftId", "=", draftId)
     .where("signOff.withdrawnAt", "is", null)
     .orderBy("signOff.createdAt", "desc")
     .execute()
-  const latest = signOffs.filter(
-    (signOff, index) => signOffs.findIndex((other) => other.id === signOff.id) === index,
-  )
-  const isFresh = (signOff: { digest: Buffer }) => digest !== null && signOff.digest.equals(digest)
-  const signed = new Set(latest.filter(isFresh).map((signOff) => signOff.id))
+  return signOffs
+    .filter(({ id }, index) => signOffs.findIndex((other) => other.id === id) === index)
+    .map(({ id, name, digest: signed, createdAt }) => ({
+      person: { id, name },
+      at: createdAt,
+      stale: digest === null || !signed.equals(digest),
+    }))
+}
+
+async function countOpenMustSettle(db: Db, draftId: string): Promise<number> {
   const { open } = await db
     .selectFrom("thread")
     .innerJoin("draftFigure", "draftFigure.figureVersionId", "thread.figureVersionId")
     .select((eb) => eb.fn.countAll<number>().as("open"))
-    .where("draftFigure.draftId", "=", id)
+    .where("draftFigure.draftId", "=", draftId)
     .where("thread.mustSettle", "=", true)
     .where("thread.resolvedAt", "is", null)
     .executeTakeFirstOrThrow()
+  return open
+}
+
+async function latestBundle(db: Db, draftId: string) {
   const bundle = await db
     .selectFrom("bundle")
     .select(["size", "sha256", "failure"])
     .select((eb) => eb.ref("state").$castTo<BundleState>().as("state"))
-    .where("draftId", "=", id)
+    .where("draftId", "=", draftId)
     .orderBy("createdAt", "desc")
     .executeTakeFirst()
+  if (!bundle) return null
+  const { state, size, sha256, failure } = bundle
+  const message = (failure as { message?: string } | null)?.message ?? null
+  return { state, size, sha256: sha256?.toString("hex") ?? null, failure: message }
+}
+
+/** One draft: what it pins, who signed off, what stands before the lock. @throws Problem `not-found` */
+export async function getDraft(db: Db, place: DraftPlace) {
+  const { id, manuscriptTitle, lockerId, lockerName, digest: locked, ...row } = await getDraftRow(db, place)
+  const isLocked = row.state === "locked"
+  const pins = await pinnedFigures(db, id)
+  const digest = isLocked ? locked : digestOf(manuscriptTitle, pins)
+  const signOffs = await latestSignOffs(db, id, digest)
+  const signed = new Set(signOffs.filter(({ stale }) => !stale).map(({ person }) => person.id))
+  const waitingFor = isLocked
+    ? []
+    : (await authors(db, place.manuscriptId)).filter((author) => !signed.has(author.id))
+  const openMustSettle = await countOpenMustSettle(db, id)
   return {
     id,
     ...row,
@@ -91,25 +121,33 @@ export async function getDraft(db: Db, place: DraftPlace) {
       version: pin.version,
       newest: pin.newest,
       caption: pin.caption,
-      ready: pin.resultsSha256 !== null,
+      ready: pin.results !== null,
     })),
-    signOffs: latest.map((signOff) => ({
-      person: { id: signOff.id, name: signOff.name },
-      at: signOff.createdAt,
-      stale: !isFresh(signOff),
-    })),
-    waitingFor: (await authors(db, place.manuscriptId)).filter((author) => !signed.has(author.id)),
-    openMustSettle: open,
+    signOffs,
+    waitingFor,
+    openMustSettle,
+    checks: isLocked ? [] : checksOf(pins, waitingFor, openMustSettle),
     lockedBy: lockerId && lockerName ? { id: lockerId, name: lockerName } : null,
-    bundle: bundle
-      ? {
-          state: bundle.state,
-          size: bundle.size,
-          sha256: bundle.sha256?.toString("hex") ?? null,
-          failure: (bundle.failure as { message?: string } | null)?.message ?? null,
-        }
-      : null,
+    bundle: await latestBundle(db, id),
   }
+}
+
+function checksOf(pins: readonly Pinned[], waitingFor: readonly { name: string }[], openMustSettle: number) {
+  const checks = draftChecks({
+    figures: pins.map(({ figureName, version, newest, caption, results, staleData }) => ({
+      name: figureName,
+      version,
+      newest,
+      caption,
+      ready: results !== null,
+      staleData,
+      quantities: results?.panels.flatMap((panel) => panel.quantities) ?? [],
+      warnings: results?.panels.flatMap((panel) => panel.warnings) ?? [],
+    })),
+    waitingFor: waitingFor.map(({ name }) => name),
+    openMustSettle,
+  })
+  return [...checks]
 }
 
 /** The drafts of a manuscript, newest first. */

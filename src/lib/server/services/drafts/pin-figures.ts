@@ -23,6 +23,15 @@ export async function pinFigures(
   revision: number,
 ) {
   await db.transaction().execute(async (trx) => {
+    const repeated = pins.findIndex((pin, at) => pins.findIndex((p) => p.figureId === pin.figureId) < at)
+    if (repeated >= 0)
+      throw new Problem("invalid-request", undefined, [
+        {
+          pointer: `/figures/${repeated}/figureId`,
+          code: "figure-repeated",
+          message: "A draft pins one version of a figure.",
+        },
+      ])
     const draft = await getDraftRow(trx, place)
     if (draft.state === "locked")
       throw new Problem("locked", `${draft.title} is locked; open the next draft to change it.`)
@@ -33,7 +42,8 @@ export async function pinFigures(
       .where("revision", "=", revision)
       .executeTakeFirst()
     if (numUpdatedRows === 0n) throw new Problem("stale-revision")
-    const rows = await Promise.all(pins.map((pin, index) => rowOf(trx, place.manuscriptId, pin, index)))
+    const rows = []
+    for (const [index, pin] of pins.entries()) rows.push(await rowOf(trx, place.manuscriptId, pin, index))
     await trx.deleteFrom("draftFigure").where("draftId", "=", draft.id).execute()
     if (rows.length > 0)
       await trx

@@ -1,8 +1,10 @@
 import { Problem } from "@/lib/contracts/problems"
+import type { CheckWeight, DraftCheck } from "@/lib/domain/draft-checks"
 import type { Db } from "@/lib/server/db/client"
 import { insertEvent } from "@/lib/server/db/events"
 import { addJob } from "@/lib/server/db/jobs"
 import { digestOf, pinnedFigures } from "./draft-content"
+import { draftRecord } from "./draft-record"
 import { type DraftPlace, getDraft, getDraftRow } from "./drafts"
 
 /** Locks the draft's row and returns it with the digest of what it pins at this moment. */
@@ -68,9 +70,21 @@ export async function withdrawSignOff(db: Db, place: DraftPlace, personId: strin
   })
 }
 
+/** The reason that is kept with the lock, or null when none is needed. @throws Problem `conflict` */
+function settledReason(title: string, checks: readonly DraftCheck[], reason: string | undefined) {
+  const messages = (weight: CheckWeight) =>
+    checks.filter((check) => check.weight === weight).map(({ where, message }) => `${where}: ${message}`)
+  const wrong = messages("must-fix")
+  if (wrong.length > 0) throw new Problem("conflict", `${title} cannot be locked yet. ${wrong.join(" ")}`)
+  const open = messages("needs-reason")
+  if (open.length === 0) return null
+  if (reason) return reason
+  throw new Problem("conflict", `${title} is not settled. ${open.join(" ")} Settle this, or give a reason.`)
+}
+
 /**
- * Locks a draft for good and puts the making of its bundle in the queue, in one transaction. Missing sign-offs and
- * unsettled threads need a written reason.
+ * Locks a draft for good, keeps what it is, and puts the making of its bundle in the queue, in one transaction. What is
+ * not settled needs a written reason.
  *
  * @throws Problem `invalid-request` when the name is not typed, `conflict`, `locked`
  */
@@ -81,51 +95,41 @@ export async function lockDraft(
   order: { confirm: string; digest: string; reason?: string | undefined },
 ) {
   await db.transaction().execute(async (trx) => {
-    const draft = await lockRow(trx, place)
-    if (order.confirm.trim() !== draft.title)
+    const { id, title, number, digest } = await lockRow(trx, place)
+    if (order.confirm.trim() !== title)
       throw new Problem("invalid-request", undefined, [
-        { pointer: "/confirm", code: "not-confirmed", message: `Type “${draft.title}” to confirm.` },
+        { pointer: "/confirm", code: "not-confirmed", message: `Type “${title}” to confirm.` },
       ])
-    requireDigest(draft.digest, order.digest)
-    const { figures, waitingFor, openMustSettle } = await getDraft(trx, place)
-    const unready = figures.filter((figure) => !figure.ready)
-    if (unready.length > 0)
-      throw new Problem(
-        "conflict",
-        `Not computed yet: ${unready.map((figure) => figure.figureName).join(", ")}. Wait for the proofs, or unpin them.`,
-      )
-    const open = [
-      ...(waitingFor.length > 0
-        ? [`sign-offs are missing from ${waitingFor.map((p) => p.name).join(", ")}`]
-        : []),
-      ...(openMustSettle > 0 ? [`${openMustSettle} threads must be settled`] : []),
-    ]
-    if (open.length > 0 && !order.reason)
-      throw new Problem("conflict", `Before the lock: ${open.join("; ")}. Settle this, or give a reason.`)
+    requireDigest(digest, order.digest)
+    const { checks } = await getDraft(trx, place)
+    const lockReason = settledReason(title, checks, order.reason)
+    const lockedAt = new Date()
+    const record = await draftRecord(trx, id, { digest, lockedAt, lockedBy: personId, lockReason })
     await trx
       .updateTable("draft")
       .set((eb) => ({
         state: "locked",
-        digest: draft.digest,
-        lockedAt: new Date(),
+        digest,
+        lockedAt,
         lockedBy: personId,
-        lockReason: open.length > 0 ? (order.reason ?? null) : null,
+        lockReason,
+        record: JSON.stringify(record),
         revision: eb("revision", "+", 1),
       }))
-      .where("id", "=", draft.id)
+      .where("id", "=", id)
       .execute()
-    const { id: bundleId } = await trx
+    const bundle = await trx
       .insertInto("bundle")
-      .values({ draftId: draft.id, createdBy: personId })
+      .values({ draftId: id, createdBy: personId })
       .returning("id")
       .executeTakeFirstOrThrow()
-    await addJob(trx, "make-bundle", { bundleId }, { maxAttempts: 3 })
+    await addJob(trx, "make-bundle", { bundleId: bundle.id }, { maxAttempts: 3 })
     await insertEvent(trx, {
       manuscriptId: place.manuscriptId,
       personId,
       kind: "draft.locked",
-      subject: draft.id,
-      data: { number: draft.number, digest: order.digest, reason: order.reason ?? null },
+      subject: id,
+      data: { number, digest: order.digest, reason: lockReason },
     })
   })
   return getDraft(db, place)

@@ -3,6 +3,7 @@ import type { resultsDocument } from "@/lib/contracts/figures"
 import { Problem } from "@/lib/contracts/problems"
 import type { RenderingFormat } from "@/lib/domain/states"
 import type { Db } from "@/lib/server/db/client"
+import { newerVersionExists } from "@/lib/server/services/datasets/newer-version"
 import { figureSpec } from "@specs/figure-spec"
 import { kindOf } from "@specs/kinds"
 import type { FigureSoftware } from "./figure-software"
@@ -30,22 +31,10 @@ export async function getFigureVersion(db: Db, manuscriptId: string, figureId: s
   const spec = figureSpec.parse(stored)
   const inputs = await db
     .selectFrom("figureVersionInput as i")
-    .innerJoin("datasetVersion as v", "v.id", "i.datasetVersionId")
-    .innerJoin("blob", "blob.id", "v.blobId")
-    .select(["i.datasetName as dataset", "v.number", "blob.sha256"])
-    .select((eb) =>
-      eb
-        .exists(
-          eb
-            .selectFrom("datasetVersion as newer")
-            .select("newer.id")
-            .whereRef("newer.datasetId", "=", "v.datasetId")
-            .whereRef("newer.number", ">", "v.number")
-            .where("newer.state", "=", "accepted"),
-        )
-        .$castTo<boolean>()
-        .as("newerExists"),
-    )
+    .innerJoin("datasetVersion", "datasetVersion.id", "i.datasetVersionId")
+    .innerJoin("blob", "blob.id", "datasetVersion.blobId")
+    .select(["i.datasetName as dataset", "datasetVersion.number", "blob.sha256"])
+    .select((eb) => newerVersionExists(eb).as("newerExists"))
     .where("i.figureVersionId", "=", row.id)
     .orderBy("i.datasetName")
     .execute()

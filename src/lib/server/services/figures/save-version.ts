@@ -1,21 +1,34 @@
 import { createHash } from "node:crypto"
 import { Problem } from "@/lib/contracts/problems"
 import { canonicalJson } from "@/lib/domain/canonical-json"
+import { texNameProblem } from "@/lib/domain/values-tex"
 import type { Db } from "@/lib/server/db/client"
 import { insertEvent } from "@/lib/server/db/events"
 import { addJob } from "@/lib/server/db/jobs"
 import { datasetsOf } from "@specs/compute-figure"
 import { figureSpec, type FigureSpec } from "@specs/figure-spec"
 import { issuesOf } from "@specs/read-spec"
-import { SpecError } from "@specs/spec-error"
+import { SpecError, type SpecIssue } from "@specs/spec-error"
 import { getFigureVersion } from "./figure-versions"
 import { getFigure } from "./figures"
 
 /** A spec that came from outside. @throws SpecError with every issue at its place */
 function parseSpec(json: unknown): FigureSpec {
   const parsed = figureSpec.safeParse(json)
-  if (parsed.success) return parsed.data
-  throw new SpecError(issuesOf(parsed.error))
+  if (!parsed.success) throw new SpecError(issuesOf(parsed.error))
+  const issues = macroIssues(parsed.data)
+  if (issues.length > 0) throw new SpecError(issues)
+  return parsed.data
+}
+
+/** Names of quantities that TeX has already: found here rather than when the paper is to be sent. */
+function macroIssues({ panels }: FigureSpec): SpecIssue[] {
+  return panels.flatMap((panel, at) =>
+    panel.quantities.flatMap(({ name }, index) => {
+      const message = texNameProblem(name)
+      return message ? [{ pointer: `/panels/${at}/quantities/${index}/name`, code: "tex-name", message }] : []
+    }),
+  )
 }
 
 async function pinInputs(

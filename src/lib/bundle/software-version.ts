@@ -2,17 +2,7 @@ import { createHash } from "node:crypto"
 import { existsSync, readFileSync } from "node:fs"
 import path from "node:path"
 import { fileURLToPath } from "node:url"
-
-/** What made a result: the product's version and the exact packages it ran with. */
-export interface SoftwareVersion {
-  readonly name: "afterquench"
-  readonly version: string
-  /** SHA-256 of package-lock.json. */
-  readonly lockfileSha256: string
-  readonly node: string
-  /** What compresses bundles: another version may pack the same files into other bytes. */
-  readonly zlib: string
-}
+import type { RecordedSoftware } from "./draft-record"
 
 /** The checkout's folder, found upwards from this file, which may be bundled into dist/. */
 function rootFolder(): string {
@@ -25,9 +15,10 @@ function rootFolder(): string {
   return folder
 }
 
-let known: SoftwareVersion | undefined
+let known: RecordedSoftware | undefined
 
-export function softwareVersion(): SoftwareVersion {
+/** This program and the packages it runs with. */
+export function softwareVersion(): RecordedSoftware {
   if (known) return known
   const root = rootFolder()
   const { version } = JSON.parse(readFileSync(path.join(root, "package.json"), "utf8")) as { version: string }
