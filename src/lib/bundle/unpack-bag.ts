@@ -1,4 +1,4 @@
-import { createWriteStream } from "node:fs"
+import { open } from "node:fs/promises"
 import path from "node:path"
 import { pipeline } from "node:stream/promises"
 import yauzl from "yauzl"
@@ -33,7 +33,9 @@ export async function unpackBag(zip: string, folder: string): Promise<UnpackedBa
       names.add(name)
       const file = path.join(folder, String(files.size))
       files.set(inBag, file)
-      await pipeline(await archive.openReadStreamPromise(entry), createWriteStream(file, { flags: "wx" }))
+      const input = await archive.openReadStreamPromise(entry)
+      // Opened before anything flows: a damaged entry must not leave an opening behind that fails later, unheard.
+      await pipeline(input, (await open(file, "wx")).createWriteStream())
     }
   } catch (error) {
     throw new BagError(`${at}: ${(error as Error).message}`, { cause: error })
